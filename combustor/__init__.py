@@ -1,0 +1,1 @@
+"""Size and rate gas-turbine combustors."""

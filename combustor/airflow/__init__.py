@@ -1,0 +1,1 @@
+"""Floor 3: how the air splits through the metal."""

@@ -1,0 +1,1 @@
+"""Floor 0: errors, published-method records, findings, convergence."""

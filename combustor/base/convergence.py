@@ -1,0 +1,25 @@
+"""The convergence record every iterative solve returns."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class Convergence:
+    """Outcome of an iterative solve.
+
+    Parameters
+    ----------
+    converged : bool
+    residual : float
+        Largest residual in the solve's own dimensionless measure.
+    iterations : int
+    message : str
+        Empty when converged; else what stood in the way.
+    """
+
+    converged: bool
+    residual: float
+    iterations: int
+    message: str = ""

@@ -1,0 +1,1 @@
+"""Floor 1: case files, their schema, units at the border."""

@@ -1,0 +1,1 @@
+"""Floor 3: emissions on every basis."""

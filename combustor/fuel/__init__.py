@@ -1,0 +1,1 @@
+"""Floor 2: fuels, their composition, heating value and mechanism."""

@@ -1,0 +1,1 @@
+"""Floor 2: the metal. No flow, no temperature."""

@@ -1,0 +1,1 @@
+"""Floor 3: the liner wall and the film beside it."""

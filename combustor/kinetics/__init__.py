@@ -1,0 +1,1 @@
+"""Floor 3: stirred reactors, streams and the chain they form."""

@@ -1,0 +1,1 @@
+"""Floor 7: text, colour, JSON and CSV live here alone."""
