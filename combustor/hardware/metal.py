@@ -41,7 +41,7 @@ class AxialProfile:
 
     def at(self, x: ArrayLike) -> NDArray[np.float64]:
         """Return the value at ``x`` (m); same shape as ``x``."""
-        return np.interp(x, self.station, self.value)
+        return np.interp(np.asarray(x, dtype=float), self.station, self.value)
 
     @classmethod
     def constant(cls, value: float) -> AxialProfile:
