@@ -14,6 +14,7 @@ from combustor.base.convergence import Convergence
 from combustor.base.finding import Finding
 from combustor.base.method import Method
 from combustor.emissions.exhaust import Emissions
+from combustor.hardware.metal import Hardware
 
 Status = Literal["burning", "blown_out", "not_converged"]
 
@@ -85,7 +86,8 @@ class PointRating:
 
     Fractions are fractions (pressure_loss 0.045), SI throughout. ``balances`` holds "air",
     "elements" and "enthalpy" imbalances as defined for the JSON output. ``methods`` are the
-    published methods this result stands on, for the table of sources.
+    published methods this result stands on, for the table of sources. ``hardware`` is the
+    metal the split belongs to; ``cautions`` are what the fuel asks the reader to mind.
     """
 
     name: str
@@ -109,6 +111,8 @@ class PointRating:
     findings: tuple[Finding, ...] = ()
     methods: tuple[Method, ...] = ()
     convergence: Convergence | None = None
+    hardware: Hardware | None = None
+    cautions: tuple[str, ...] = ()
 
     @property
     def converged(self) -> bool:
