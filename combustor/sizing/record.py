@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
-from combustor.airflow.split import AirSplit
+from combustor.airflow.result import AirSplit
 from combustor.base.convergence import Convergence
 from combustor.base.finding import Finding
 from combustor.base.method import Method
