@@ -1,1 +1,3 @@
 """Size and rate gas-turbine combustors."""
+
+__version__ = "0.1.0"

@@ -1,0 +1,189 @@
+"""What the command line takes. Kept free of heavy imports, so that ``--help`` answers at once."""
+
+from __future__ import annotations
+
+import argparse
+from collections.abc import Callable, Sequence
+from typing import NoReturn
+
+from combustor import __version__
+
+_QUANTITIES = 'Quantities take a unit ("700 K", "20 bar", "5 ms", "5 %"); bare numbers are SI.'
+_EXIT_CODES = (
+    "exit codes: 0 good; 1 a limit broken, a point blown out or not converged, no design "
+    "possible; 2 bad input"
+)
+
+
+class ArgumentError(Exception):
+    """The command line cannot be understood; carries the plain lines to show."""
+
+
+class _Parser(argparse.ArgumentParser):
+    """A parser whose errors are raised as plain lines instead of printed with the usage."""
+
+    def error(self, message: str) -> NoReturn:
+        raise ArgumentError(f"{self.prog}: {message}\n{self.prog} --help shows what it takes")
+
+
+def parse(argv: Sequence[str]) -> argparse.Namespace:
+    """Return the parsed command line.
+
+    Raises
+    ------
+    ArgumentError
+        With the lines to show on stderr.
+    SystemExit
+        After ``--help`` or ``--version`` has been printed.
+    """
+    parser, commands = _parsers()
+    command = next((word for word in argv if not word.startswith("-")), None)
+    choices = ", ".join(commands)
+    if not argv:
+        raise ArgumentError(f"combustor: no command given\ncommands: {choices}")
+    if command is not None and command not in commands:
+        raise ArgumentError(
+            f"combustor: no command {command!r}{_nearest(command, list(commands))}\n"
+            f"commands: {choices}"
+        )
+    arguments, unknown = parser.parse_known_args(argv)
+    if unknown:
+        chosen = commands[arguments.command]
+        options = [option for action in chosen._actions for option in action.option_strings]
+        raise ArgumentError(
+            f"{chosen.prog}: {unknown[0]!r} is not understood{_nearest(unknown[0], options)}\n"
+            f"{chosen.prog} --help shows what it takes"
+        )
+    return arguments
+
+
+def _parsers() -> tuple[_Parser, dict[str, _Parser]]:
+    parser = _Parser(
+        prog="combustor",
+        description="Size and rate gas-turbine flame tubes: air split, fire, walls, emissions.",
+        epilog=f"{_EXIT_CODES}\n\nexample:\n  combustor new my.toml && combustor rate my.toml",
+        formatter_class=argparse.RawDescriptionHelpFormatter,
+        allow_abbrev=False,
+    )
+    parser.add_argument("--version", action="version", version=f"combustor {__version__}")
+    group = parser.add_subparsers(dest="command", metavar="COMMAND", required=True)
+    commands: dict[str, _Parser] = {}
+    for name, summary, examples, fill in _COMMANDS:
+        commands[name] = command = group.add_parser(
+            name,
+            help=summary,
+            description=f"{summary[0].upper()}{summary[1:]}.",
+            epilog="example:\n" + "\n".join(f"  {line}" for line in examples),
+            formatter_class=argparse.RawDescriptionHelpFormatter,
+            allow_abbrev=False,
+        )
+        fill(command)
+        command.add_argument(
+            "--json", action="store_true", help="one JSON document on stdout instead of tables"
+        )
+    return parser, commands
+
+
+def _tables(command: _Parser) -> None:
+    command.add_argument("--csv", metavar="DIR", help="also write each table to a file in DIR")
+    _force(command)
+
+
+def _force(command: _Parser) -> None:
+    command.add_argument("--force", action="store_true", help="replace files that are there")
+
+
+def _new(command: _Parser) -> None:
+    command.add_argument("file", metavar="FILE", help="case file to write")
+    command.add_argument("--layout", metavar="L", default="can", help="layout (default can)")
+    command.add_argument(
+        "--fuel", metavar="F", default="natural-gas", help="fuel (default natural-gas)"
+    )
+    _force(command)
+
+
+def _size(command: _Parser) -> None:
+    command.add_argument("case", metavar="CASE", help="case file")
+    command.add_argument("-o", metavar="FILE", dest="output", help="write the completed case")
+    _tables(command)
+
+
+def _rate(command: _Parser) -> None:
+    command.add_argument("case", metavar="CASE", help="case file")
+    command.add_argument(
+        "--point", metavar="NAME", action="append", help="rate this point only; may be repeated"
+    )
+    command.add_argument("--fuel", metavar="NAME", help="burn this fuel instead of the case's own")
+    _tables(command)
+
+
+def _flame(command: _Parser) -> None:
+    command.description = f"{command.description}\n{_QUANTITIES}"
+    command.add_argument("fuel", metavar="FUEL", help="catalogue name, or a blend by volume")
+    command.add_argument("--phi", metavar="X", required=True, help="equivalence ratio")
+    command.add_argument(
+        "--temperature", metavar="T", required=True, help="of the mixture, or of the air"
+    )
+    command.add_argument("--pressure", metavar="P", required=True, help="absolute")
+    command.add_argument("--time", metavar="T", help="residence time of a stirred reactor")
+    command.add_argument(
+        "--fuel-temperature", metavar="T", help="of the fuel; else mixed at --temperature"
+    )
+    command.add_argument(
+        "--humidity", metavar="H", help="kg water per kg dry air (default the ISO day, 0.00634)"
+    )
+    command.add_argument("--mechanism", metavar="FILE", help="a Cantera file of your own")
+    _tables(command)
+
+
+def _fuels(command: _Parser) -> None:
+    command.add_argument("name", metavar="NAME", nargs="?", help="show this fuel in full")
+    _tables(command)
+
+
+_COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ...] = (
+    (
+        "new",
+        "write a commented starter case that runs as it is",
+        ("combustor new my.toml", "combustor new my.toml --fuel propane"),
+        _new,
+    ),
+    (
+        "size",
+        "size the metal and show each dimension with the method behind it",
+        ("combustor size my.toml -o sized.toml",),
+        _size,
+    ),
+    (
+        "rate",
+        "what the metal does: air split, zones, walls, exit, emissions, findings",
+        (
+            "combustor rate sized.toml",
+            "combustor rate sized.toml --point idle --json",
+            "combustor rate sized.toml --fuel natural-gas+30%hydrogen --csv tables",
+        ),
+        _rate,
+    ),
+    (
+        "flame",
+        "quick look at a flame: equilibrium, and a stirred reactor of a residence time",
+        (
+            'combustor flame methane --phi 0.5 --temperature "700 K" --pressure "20 bar" '
+            '--time "5 ms"',
+        ),
+        _flame,
+    ),
+    (
+        "fuels",
+        "the fuel catalogue, or one fuel in full",
+        ("combustor fuels", "combustor fuels natural-gas+30%hydrogen"),
+        _fuels,
+    ),
+)
+
+
+def _nearest(word: str, choices: list[str]) -> str:
+    from difflib import get_close_matches
+
+    found = get_close_matches(word, choices, n=1)
+    return f"; did you mean {found[0]!r}?" if found else ""

@@ -1,0 +1,84 @@
+"""Run one command: plain errors on stderr, the documented exit code, and never a traceback."""
+
+from __future__ import annotations
+
+import os
+import sys
+from collections.abc import Sequence
+
+INTERNAL_ERROR = 1
+INTERRUPTED = 130
+BROKEN_PIPE = 141
+
+
+def main(argv: Sequence[str] | None = None) -> int:
+    """Run the command line ``argv`` (default: the process's own) and return the exit code."""
+    try:
+        code = _run(sys.argv[1:] if argv is None else list(argv))
+        if sys.stdout is not None:
+            sys.stdout.flush()
+    except BrokenPipeError:
+        _silence_stdout()
+        return BROKEN_PIPE
+    except KeyboardInterrupt:
+        return INTERRUPTED
+    except OSError as error:
+        _silence_stdout()
+        _complain(f"combustor: the result cannot be written: {error.strerror or error}")
+        return INTERNAL_ERROR
+    return code
+
+
+def _run(argv: list[str]) -> int:
+    from combustor.cli.arguments import ArgumentError, parse
+
+    try:
+        arguments = parse(argv)
+    except ArgumentError as error:
+        _complain(str(error))
+        return 2
+    except SystemExit as finished:
+        return int(finished.code or 0)
+    return _answer(arguments)
+
+
+def _answer(arguments: object) -> int:
+    import warnings
+
+    from combustor.base.errors import CombustorError
+    from combustor.cli.complaint import complaint, internal_complaint
+
+    try:
+        with warnings.catch_warnings():
+            warnings.simplefilter("ignore")
+            from combustor.cli import commands
+
+            answer = commands.answer(arguments)
+    except CombustorError as error:
+        _complain(complaint(error))
+        return error.exit_code
+    except Exception as error:
+        if os.environ.get("COMBUSTOR_DEBUG"):
+            raise
+        _complain(internal_complaint(error))
+        return INTERNAL_ERROR
+    if answer.notes:
+        _complain("\n".join(answer.notes))
+    if sys.stdout is not None:
+        sys.stdout.write(answer.text)
+    return answer.code
+
+
+def _complain(text: str) -> None:
+    if sys.stderr is not None:
+        sys.stderr.write(f"{text}\n")
+
+
+def _silence_stdout() -> None:
+    # Else the interpreter tries to flush what nobody reads and reports that at exit.
+    if sys.stdout is None:
+        return
+    try:
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+    except (OSError, ValueError):
+        return

@@ -1,0 +1,136 @@
+"""The sizing report: each dimension, the method that decided it, and the rival that lost."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from combustor.base.method import Method
+from combustor.report import fields
+from combustor.report.cautions import cautions
+from combustor.report.document import Block, Facts, Heading, Prose, Table
+from combustor.report.field import Field, row, select
+from combustor.report.json_out import findings_list
+from combustor.report.rating_rows import rows_of_split
+from combustor.report.rating_tables import findings_table
+from combustor.sizing.record import Design, Dimension
+
+
+def sizing_report(
+    design: Design, title: str, air_flow: float, fuel_cautions: tuple[str, ...]
+) -> tuple[Block, ...]:
+    """Return the whole report of a sized case; ``air_flow`` at the design point, kg/s."""
+    done = "converged" if design.converged else "! not converged"
+    facts = (
+        ("pressure loss", _loss_words(design)),
+        ("fuel flow", f"{design.fuel_flow:.4f} kg/s at the design point"),
+        ("solve", f"{done} in {design.convergence.iterations} passes"),
+    )
+    split = rows_of_split(design.split, design.hardware, air_flow)
+    return (
+        Heading(f"{title}: sized" if title else "Sized"),
+        Facts(facts),
+        dimensions_table(design),
+        Table("zones", "Zones at the design point", fields.ZONE_TARGETS, design.zones),
+        Table("split", "Air split at the design point", fields.SPLIT, split),
+        findings_table([("", finding) for finding in design.findings]),
+        Heading("Before use"),
+        *(Prose(line) for line in cautions(fuel_cautions)),
+    )
+
+
+def dimensions_table(design: Design) -> Table:
+    """Return one line a dimension: value, method and source, and what lost to it."""
+    records = tuple(
+        {
+            "line": dimension_values(dimension),
+            "text": _value_text(dimension, dimension.value),
+            "method": _method_words(dimension.method, dimension.note),
+            "rival": _rival_words(dimension),
+        }
+        for dimension in design.dimensions
+    )
+    name, value, unit = select(fields.DIMENSIONS, "name", "value", "unit")
+    columns = (
+        name.beneath("line"),
+        Field("text", value.label, figures=4),
+        unit.beneath("line"),
+        Field("method", "method (source; where it was read)"),
+        Field("rival", "rival that lost"),
+    )
+    return Table("dimensions", "Dimensions", columns, records)
+
+
+def sizing_data(design: Design, air_flow: float) -> tuple[Table, ...]:
+    """Return every number of the design as tables, one CSV file each."""
+    lines = tuple(dimension_values(dimension) for dimension in design.dimensions)
+    split = rows_of_split(design.split, design.hardware, air_flow)
+    return (
+        Table("dimensions", "Dimensions", fields.DIMENSIONS, lines),
+        Table("zones", "Zones", fields.ZONE_TARGETS, design.zones),
+        Table("split", "Air split", fields.SPLIT, split),
+        Table("findings", "Findings", fields.FINDINGS, design.findings),
+    )
+
+
+SIZING_TABLES = ("dimensions", "zones", "split", "findings")
+
+
+def design_document(
+    design: Design, title: str, air_flow: float, version: str, case_sha256: str
+) -> dict[str, Any]:
+    """Return the document of ``size --json``."""
+    split = rows_of_split(design.split, design.hardware, air_flow)
+    return {
+        "title": title,
+        "version": version,
+        "case_sha256": case_sha256,
+        "converged": design.converged,
+        "pressure_loss_percent": 100.0 * design.split.pressure_loss,
+        "pressure_loss_target_percent": 100.0 * design.pressure_loss_target,
+        "fuel_flow_kg_s": design.fuel_flow,
+        "dimensions": [dimension_values(dimension) for dimension in design.dimensions],
+        "zones": [row(fields.ZONE_TARGETS, zone) for zone in design.zones],
+        "split": [row(fields.SPLIT, line) for line in split],
+        "findings": findings_list(design.findings),
+    }
+
+
+def dimension_values(dimension: Dimension) -> dict[str, Any]:
+    """Return one dimension as plain values in the unit it is printed in."""
+    kind = fields.UNIT_KINDS[dimension.unit]
+    rival = dimension.candidate
+    return {
+        "name": dimension.name,
+        "value": kind.value({"value": dimension.value}),
+        "unit": kind.unit,
+        "method": dimension.method.quantity,
+        "source": dimension.method.source,
+        "reading": dimension.method.reading,
+        "note": dimension.note,
+        "candidate_value": None if rival is None else kind.value({"value": rival.value}),
+        "candidate_method": None if rival is None else rival.method.quantity,
+        "candidate_source": None if rival is None else rival.method.citation,
+        "candidate_reason": None if rival is None else rival.reason,
+    }
+
+
+def _value_text(dimension: Dimension, value: float) -> str:
+    return fields.UNIT_KINDS[dimension.unit].text({"value": value})
+
+
+def _method_words(method: Method, note: str) -> str:
+    words = f"{method.quantity} ({method.source}; {method.reading})"
+    return f"{words}; {note}" if note else words
+
+
+def _rival_words(dimension: Dimension) -> str:
+    rival = dimension.candidate
+    if rival is None:
+        return "none"
+    value = _value_text(dimension, rival.value)
+    return f"{value}: {rival.method.quantity} ({rival.method.citation}); {rival.reason}"
+
+
+def _loss_words(design: Design) -> str:
+    reached, wanted = 100.0 * design.split.pressure_loss, 100.0 * design.pressure_loss_target
+    return f"{reached:.2f} % at the design point, {wanted:.2f} % wanted"
