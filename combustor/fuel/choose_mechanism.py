@@ -1,0 +1,147 @@
+"""Which reaction mechanism burns a fuel, and how far it can be trusted with it."""
+
+from __future__ import annotations
+
+import tomllib
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+from pathlib import Path
+from typing import Any
+
+import cantera as ct
+
+from combustor.base.errors import InputError, Problem
+from combustor.fuel.mechanism import locate, shipped_folder
+
+
+@dataclass(frozen=True)
+class Mechanism:
+    """One mechanism of the catalogue.
+
+    Parameters
+    ----------
+    name, file, origin : str
+        What it is called, which file, where that file comes from.
+    burns, carries : frozenset of str
+        Species it may be given as fuel; species a fuel may hold besides. Upper case.
+    nitrogen_chemistry : bool
+    source, reading, licence, note : str
+    cautions : tuple of str
+        Always said.
+    species_cautions : mapping of str to str
+        Said when the fuel holds more than ``minor_share`` of that species.
+    minor_share : float
+    """
+
+    name: str
+    file: str
+    origin: str
+    burns: frozenset[str]
+    carries: frozenset[str]
+    nitrogen_chemistry: bool
+    source: str
+    reading: str
+    licence: str
+    note: str
+    cautions: tuple[str, ...] = ()
+    species_cautions: Mapping[str, str] = field(default_factory=dict)
+    minor_share: float = 0.0
+
+    @property
+    def path(self) -> Path:
+        """Where the file lies; a file of the same name in the working folder is not taken."""
+        folders = [shipped_folder(), *(Path(folder) for folder in ct.get_data_directories())]
+        for folder in folders:
+            if folder.is_absolute() and (folder / self.file).is_file():
+                return (folder / self.file).resolve()
+        return locate(self.file)
+
+    def cautions_for(self, composition: Mapping[str, float]) -> tuple[str, ...]:
+        """Return what must be said when this mechanism burns that mixture (mole fractions)."""
+        shares = {species.upper(): share for species, share in composition.items()}
+        outside = sorted(set(shares) - self.burns - self.carries)
+        said = list(self.cautions)
+        if outside:
+            said.append(f"{self.name} was not made to burn {', '.join(outside)}")
+        said += [
+            text
+            for species, text in self.species_cautions.items()
+            if shares.get(species, 0.0) > self.minor_share
+        ]
+        return tuple(said)
+
+
+def catalogue() -> tuple[Mechanism, ...]:
+    """Return every mechanism the tool uses by itself, preferred first."""
+    text = (shipped_folder() / "catalogue.toml").read_text(encoding="utf-8")
+    return tuple(_mechanism(row) for row in tomllib.loads(text)["mechanism"])
+
+
+def choose(compositions: Iterable[Mapping[str, float]]) -> Mechanism:
+    """Return the first mechanism that burns every one of these mixtures.
+
+    Parameters
+    ----------
+    compositions : iterable of mapping
+        Mole fractions of each fuel; several where one comparison must use one mechanism.
+
+    Raises
+    ------
+    InputError
+        No mechanism burns them all; names the species that stand in the way.
+    """
+    wanted = {
+        species.upper()
+        for composition in compositions
+        for species, share in composition.items()
+        if share > 0.0
+    }
+    known = catalogue()
+    for mechanism in known:
+        if wanted <= mechanism.burns | mechanism.carries:
+            return mechanism
+    raise InputError(_refusal(wanted, known))
+
+
+def known_as(path: Path) -> Mechanism | None:
+    """Return the catalogue's entry for a mechanism file, or None for a user's own."""
+    for mechanism in catalogue():
+        if mechanism.path == path.resolve():
+            return mechanism
+    return None
+
+
+def _refusal(wanted: set[str], known: tuple[Mechanism, ...]) -> Problem:
+    burnable = frozenset[str]().union(*(m.burns | m.carries for m in known))
+    nowhere = sorted(wanted - burnable)
+    if nowhere:
+        return Problem(
+            f"no mechanism here burns {', '.join(nowhere)}",
+            key="composition",
+            allowed=f"use {', '.join(sorted(burnable))}, or name a Cantera mechanism of your own "
+            "that holds it",
+        )
+    lacking = [f"{m.name} lacks {', '.join(sorted(wanted - m.burns - m.carries))}" for m in known]
+    return Problem(
+        f"no mechanism here burns {', '.join(sorted(wanted))} together ({'; '.join(lacking)})",
+        key="composition",
+        allowed="name a Cantera mechanism of your own that burns them all",
+    )
+
+
+def _mechanism(row: dict[str, Any]) -> Mechanism:
+    return Mechanism(
+        name=row["name"],
+        file=row["file"],
+        origin=row["from"],
+        burns=frozenset(row["burns"]),
+        carries=frozenset(row["carries"]),
+        nitrogen_chemistry=row["nitrogen_chemistry"],
+        source=row["source"],
+        reading=row["reading"],
+        licence=row["licence"],
+        note=row["note"],
+        cautions=tuple(row["cautions"]),
+        species_cautions=row.get("species_cautions", {}),
+        minor_share=row.get("minor_share", 0.0),
+    )
