@@ -1,0 +1,238 @@
+"""The case: what the engineer states. Frozen, SI inside; files are read in ``load``.
+
+Keys, their units when written bare, and their defaults stand here once.
+"""
+
+from __future__ import annotations
+
+import math
+from typing import Any, Literal
+
+from pydantic import BaseModel, ConfigDict, Field, PrivateAttr
+
+from combustor.case import kinds as k
+from combustor.case.hardware_table import HardwareTable
+
+Layout = Literal["can", "can-annular", "annular"]
+Flow = Literal["straight", "reverse"]
+PointKind = Literal["rated", "part", "idle", "relight"]
+FrontEnd = Literal["diffusion", "rich-lean", "lean-premixed"]
+
+ISO_HUMIDITY = 0.00634
+"""Water per dry air of the ISO day (15 degC, 60 % relative humidity), kg/kg."""
+
+
+class Table(BaseModel):
+    """A table of the case file: frozen, no key beyond those named."""
+
+    model_config = ConfigDict(extra="forbid", frozen=True)
+
+
+class Annulus(Table):
+    """Inner and outer diameter of an annulus, m."""
+
+    inner: k.InnerDiameter
+    outer: k.Diameter
+
+    @property
+    def area(self) -> float:
+        """Flow area, m2."""
+        return math.pi / 4.0 * (self.outer**2 - self.inner**2)
+
+
+class Combustor(Table):
+    """``[combustor]``: layout and the room there is. Lengths and diameters in m.
+
+    ``casing_diameter`` is the bore of one can's casing; an annular or can-annular machine
+    states ``casing_outer_diameter`` and ``casing_inner_diameter``. ``casing_length`` runs
+    from compressor-exit flange to turbine-inlet flange.
+    """
+
+    layout: Layout
+    cans: k.Cans = 1
+    flow: Flow = "straight"
+    casing_diameter: k.Envelope | None = None
+    casing_outer_diameter: k.Envelope | None = None
+    casing_inner_diameter: k.InnerDiameter | None = None
+    casing_length: k.Envelope | None = None
+    inlet_annulus: Annulus | None = None
+    exit_annulus: Annulus | None = None
+    transition_length: k.DuctLength = 0.0
+
+
+class Fuel(Table):
+    """``[fuel]``: catalogue name or blend, or mole fractions; K, Pa."""
+
+    name: k.Name | None = None
+    composition: dict[str, k.MoleFraction] | None = None
+    temperature: k.FuelTemperature = 288.15
+    supply_pressure: k.SupplyPressure | None = None
+
+
+class Point(Table):
+    """``[[points]]``: one operating point.
+
+    ``air_flow`` is moist, whole machine, kg/s; ``inlet_pressure`` total and absolute, Pa;
+    temperatures K; ``humidity`` kg water per kg dry air; ``load`` in percent of rated
+    output; ``output`` W; ``water_injection`` kg/s. Exactly one of ``exit_temperature``,
+    ``fuel_flow`` and ``fuel_air_ratio`` is not None.
+    """
+
+    name: k.Name
+    kind: PointKind
+    air_flow: k.AirFlow
+    inlet_pressure: k.InletPressure
+    inlet_temperature: k.InletTemperature
+    exit_temperature: k.ExitTemperature | None = None
+    fuel_flow: k.FuelFlow | None = None
+    fuel_air_ratio: k.FuelAirRatio | None = None
+    humidity: k.Humidity = ISO_HUMIDITY
+    fuel_temperature: k.FuelTemperature | None = None
+    load: k.Load | None = None
+    output: k.Output | None = None
+    water_injection: k.WaterFlow = 0.0
+    ambient_temperature: k.AmbientTemperature | None = None
+    ambient_pressure: k.AmbientPressure | None = None
+    cycle_mode: k.Text | None = None
+    fuel_split: dict[str, k.Share] | None = None
+
+
+class ZoneEquivalenceRatios(Table):
+    """Equivalence ratio wanted at the end of the primary and secondary zone."""
+
+    primary: k.EquivalenceRatio = 0.95
+    secondary: k.EquivalenceRatio = 0.60
+
+
+class WantedEmissions(Table):
+    """Mole fractions wanted, dry at 15 % O2; None where nothing is asked."""
+
+    nox: k.Concentration | None = None
+    co: k.Concentration | None = None
+
+
+class Targets(Table):
+    """``[targets]``: what is wanted, and the choices sizing may be held to.
+
+    None leaves the choice to sizing. ``pressure_loss`` is (inlet total - exit total) /
+    inlet total. Lengths m, angles rad, temperatures K, air shares as fractions of air_flow.
+    """
+
+    design_point: k.Name = ""
+    pressure_loss: k.PressureLoss | None = None
+    front_end: FrontEnd = "diffusion"
+    equivalence_ratio: ZoneEquivalenceRatios = Field(default_factory=ZoneEquivalenceRatios)
+    pattern_factor: k.PatternFactor = 0.15
+    wall_temperature: k.WallTemperature = 1123.15
+    emissions: WantedEmissions = Field(default_factory=WantedEmissions)
+
+    liner_area_ratio: k.AreaRatio | None = None
+    annulus_velocity: k.AnnulusVelocity | None = None
+    diffuser_kind: Literal["faired", "dump"] | None = None
+    diffuser_loss_coefficient: k.LossCoefficient | None = None
+    swirler_air: k.Fraction | None = None
+    dome_air: k.Fraction | None = None
+    film_air: k.Fraction | None = None
+    leakage: k.Fraction = 0.02
+    swirler_vane_angle: k.VaneAngle = math.pi / 4.0
+    swirler_vane_count: k.Vanes = 12
+    swirler_vane_thickness: k.Thickness = 1.2e-3
+    swirler_vane_shape: Literal["flat", "curved"] = "flat"
+    swirler_hub_diameter: k.HubDiameter | None = None
+    hole_edge: Literal["plain", "plunged"] = "plain"
+    primary_holes: k.Holes | None = None
+    secondary_holes: k.Holes | None = None
+    dilution_holes: k.Holes | None = None
+    primary_length: k.Length | None = None
+    secondary_length: k.Length | None = None
+    dilution_length: k.Length | None = None
+    slot_pitch: k.Pitch | None = None
+    slot_height: k.SlotHeight | None = None
+    drill_step: k.DrillStep | None = None
+    sheet_thickness: k.Thickness = 1.2e-3
+    sheet_conductivity: k.Conductivity = 26.0
+    sheet_emissivity: k.Emissivity = 0.8
+    casing_emissivity: k.Emissivity = 0.7
+    coating_thickness: k.CoatingThickness = 0.0
+    coating_conductivity: k.Conductivity = 1.0
+    roughness: k.Roughness = 1.5e-6
+
+
+class Model(Table):
+    """``[model]``: settings of the reactor networks; None is the tool's default.
+
+    ``unmixedness``: standard deviation of mixture fraction over its mean; ``recirculation``:
+    recirculated mass per fresh mass; ``mixing``: exchange rate, 1/s; ``primary_jet_share``:
+    share of the primary row's air that burns in the primary zone.
+    """
+
+    unmixedness: k.Unmixedness | None = None
+    recirculation: k.Recirculation | None = None
+    mixing: k.Mixing | None = None
+    mechanism: k.Text | None = None
+    streams: k.Streams | None = None
+    cells: k.Cells | None = None
+    wall_stations: k.Cells | None = None
+    primary_jet_share: k.Share = 0.5
+
+
+class Rules(Table):
+    """``[rules]``: which emission rules bind, and the facts they need."""
+
+    names: tuple[k.Text, ...] = ()
+    heat_input: k.HeatInput | None = None
+    unit_state: Literal["new", "existing"] | None = None
+    use: k.Text | None = None
+    rated_thrust: k.Thrust | None = None
+    engines_tested: k.Engines | None = None
+    confirmed: tuple[k.Text, ...] = ()
+
+
+class Case(Table):
+    """A whole case file. Read one with ``load_case``."""
+
+    title: k.Title = "untitled"
+    combustor: Combustor
+    fuel: Fuel
+    points: tuple[Point, ...] = Field(min_length=1)
+    targets: Targets = Field(default_factory=Targets)
+    hardware: HardwareTable | None = None
+    model: Model = Field(default_factory=Model)
+    rules: Rules = Field(default_factory=Rules)
+
+    _text: str = PrivateAttr(default="")
+    _file: str = PrivateAttr(default="")
+    _sha256: str = PrivateAttr(default="")
+
+    @property
+    def text(self) -> str:
+        """The text this case was read from; empty when it was not read."""
+        return self._text
+
+    @property
+    def file(self) -> str:
+        """Name of the file it was read from."""
+        return self._file
+
+    @property
+    def sha256(self) -> str:
+        """Digest of the text this case was read from, hex."""
+        return self._sha256
+
+    @property
+    def design_point(self) -> Point:
+        """The point that sizing aims at."""
+        return self.point(self.targets.design_point)
+
+    def point(self, name: str) -> Point:
+        """Return the point called ``name``; KeyError when there is none."""
+        for point in self.points:
+            if point.name == name:
+                return point
+        raise KeyError(name)
+
+    def __eq__(self, other: Any) -> bool:
+        """Two cases are the same when they say the same, wherever they were read."""
+        return isinstance(other, Case) and self.__dict__ == other.__dict__
+
+    __hash__ = None  # type: ignore[assignment]
