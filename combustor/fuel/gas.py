@@ -19,6 +19,7 @@ from numpy.typing import NDArray
 from combustor.base.errors import InputError, NotConvergedError, Problem
 from combustor.base.method import Method
 from combustor.fuel.mechanism import locate
+from combustor.fuel.rates import Rates
 
 Array = NDArray[np.float64]
 
@@ -27,6 +28,7 @@ STANDARD_TEMPERATURE = 288.15  # K, ISO 13443 reference of heating values used h
 STANDARD_PRESSURE = 101325.0  # Pa
 ISO_DAY_HUMIDITY = 0.00634  # kg water per kg dry air
 
+BURNT_ELEMENTS = ("C", "H", "O", "N")
 DRY_AIR: Mapping[str, float] = {"O2": 0.2095, "N2": 0.7808, "AR": 0.0093, "CO2": 0.0004}
 
 DRY_AIR_COMPOSITION = Method(
@@ -342,29 +344,35 @@ class Gas:
         float
             Ideal gas; zero for a mixture with nothing to burn [J/kg]
         """
-        atoms = dict(
-            zip(self.element_names, self.element_moles(mass_fractions).tolist(), strict=True)
-        )
-        carbon, hydrogen = atoms.get("C", 0.0), atoms.get("H", 0.0)
-        oxygen, nitrogen = atoms.get("O", 0.0), atoms.get("N", 0.0)
-        molar = self._molar_enthalpies(temperature)
-        products = 0.0
-        if carbon > 0.0:
-            products += carbon * molar[self.index("CO2")]
-        products += 0.5 * hydrogen * molar[self.index("H2O")]
-        products += 0.5 * nitrogen * molar[self.index("N2")]
-        needed = (carbon + 0.25 * hydrogen - 0.5 * oxygen) * molar[self.index("O2")]
-        inert = sum(
-            mass_fractions[place] / self.molar_masses[place] * molar[place]
-            for place in self._noble_places
-        )
-        fuel = float((mass_fractions / self.molar_masses) @ molar)
-        return float(fuel + needed - products - inert)
+        heat = self._combustion_heats(temperature)
+        return float((mass_fractions / self.molar_masses) @ heat)
 
     @cached_property
-    def _noble_places(self) -> tuple[int, ...]:
-        reactive = [place for place, name in enumerate(self.element_names) if name in "CHON"]
-        return tuple(np.flatnonzero(self.element_matrix[reactive].sum(axis=0) == 0.0).tolist())
+    def combustion_heats(self) -> Array:
+        """Heat of complete combustion of each species, water as vapour [J/mol]."""
+        return self._combustion_heats(STANDARD_TEMPERATURE)
+
+    @cached_property
+    def oxygen_demands(self) -> Array:
+        """Oxygen molecules each species needs to burn completely; negative where it brings some."""
+        need = {"C": 1.0, "H": 0.25, "O": -0.5}
+        weights = np.array([need.get(element, 0.0) for element in self.element_names])
+        return weights @ self.element_matrix
+
+    @cached_property
+    def rates(self) -> Rates:
+        """Rates of the chemistry with their derivatives."""
+        return Rates(self.solution)
+
+    def _combustion_heats(self, temperature: float) -> Array:
+        molar = self._molar_enthalpies(temperature)
+        heat = molar + self.oxygen_demands * molar[self.index("O2")]
+        atoms = dict(zip(self.element_names, self.element_matrix, strict=True))
+        for element, share, product in (("C", 1.0, "CO2"), ("H", 0.5, "H2O"), ("N", 0.5, "N2")):
+            if element in atoms and self.has(product):
+                heat = heat - share * atoms[element] * molar[self.index(product)]
+        reactive = sum(atoms[element] for element in atoms if element in BURNT_ELEMENTS)
+        return np.where(np.asarray(reactive) > 0.0, heat, 0.0)
 
     def _molar_enthalpies(self, temperature: float) -> Array:
         self.solution.TP = temperature, STANDARD_PRESSURE
