@@ -1,3 +1,77 @@
-"""Size and rate gas-turbine combustors."""
+"""Size and rate gas-turbine combustors.
+
+``case = load_case(path)``; ``design = size(case)``; ``ratings = rate(case)``. Everything in SI
+units; every name below is imported when it is first used.
+"""
+
+from __future__ import annotations
+
+from importlib import import_module
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from combustor.api import find_fuel, flame, fuel_of, rate, size
+    from combustor.base.errors import (
+        CombustorError,
+        InfeasibleError,
+        InputError,
+        NotConvergedError,
+    )
+    from combustor.case import Case, load_case, write_case
+    from combustor.fuel.record import Fuel
+    from combustor.rating.record import PointRating, Ratings
+    from combustor.report.frame import frame
+    from combustor.sizing.record import Design
 
 __version__ = "0.1.0"
+
+_HOMES = {
+    "Case": "combustor.case",
+    "CombustorError": "combustor.base.errors",
+    "Design": "combustor.sizing.record",
+    "Fuel": "combustor.fuel.record",
+    "InfeasibleError": "combustor.base.errors",
+    "InputError": "combustor.base.errors",
+    "NotConvergedError": "combustor.base.errors",
+    "PointRating": "combustor.rating.record",
+    "Ratings": "combustor.rating.record",
+    "find_fuel": "combustor.api",
+    "flame": "combustor.api",
+    "frame": "combustor.report.frame",
+    "fuel_of": "combustor.api",
+    "load_case": "combustor.case",
+    "rate": "combustor.api",
+    "size": "combustor.api",
+    "write_case": "combustor.case",
+}
+
+__all__ = [
+    "Case",
+    "CombustorError",
+    "Design",
+    "Fuel",
+    "InfeasibleError",
+    "InputError",
+    "NotConvergedError",
+    "PointRating",
+    "Ratings",
+    "__version__",
+    "find_fuel",
+    "flame",
+    "frame",
+    "fuel_of",
+    "load_case",
+    "rate",
+    "size",
+    "write_case",
+]
+
+
+def __getattr__(name: str) -> Any:
+    if name not in _HOMES:
+        raise AttributeError(f"module 'combustor' has no attribute {name!r}")
+    return getattr(import_module(_HOMES[name]), name)
+
+
+def __dir__() -> list[str]:
+    return sorted(__all__)

@@ -5,6 +5,10 @@ from __future__ import annotations
 import os
 import sys
 from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    import argparse
 
 INTERNAL_ERROR = 1
 INTERRUPTED = 130
@@ -42,7 +46,7 @@ def _run(argv: list[str]) -> int:
     return _answer(arguments)
 
 
-def _answer(arguments: object) -> int:
+def _answer(arguments: argparse.Namespace) -> int:
     import warnings
 
     from combustor.base.errors import CombustorError
@@ -51,9 +55,9 @@ def _answer(arguments: object) -> int:
     try:
         with warnings.catch_warnings():
             warnings.simplefilter("ignore")
-            from combustor.cli import commands
+            from combustor.cli.commands import answer
 
-            answer = commands.answer(arguments)
+            answered = answer(arguments)
     except CombustorError as error:
         _complain(complaint(error))
         return error.exit_code
@@ -62,11 +66,11 @@ def _answer(arguments: object) -> int:
             raise
         _complain(internal_complaint(error))
         return INTERNAL_ERROR
-    if answer.notes:
-        _complain("\n".join(answer.notes))
+    if answered.notes:
+        _complain("\n".join(answered.notes))
     if sys.stdout is not None:
-        sys.stdout.write(answer.text)
-    return answer.code
+        sys.stdout.write(answered.text)
+    return answered.code
 
 
 def _complain(text: str) -> None:

@@ -14,4 +14,10 @@ NOT_ASSESSED = "Not assessed: combustion dynamics, buckling, life."
 
 def cautions(of_fuels: Iterable[str] = ()) -> tuple[str, ...]:
     """Return the lines that end a report, those of the fuels between the general ones."""
-    return (PRE_CHECK, *dict.fromkeys(of_fuels), NOT_ASSESSED)
+    return (PRE_CHECK, *map(sentence, dict.fromkeys(of_fuels)), NOT_ASSESSED)
+
+
+def sentence(words: str) -> str:
+    """Return ``words`` with a capital first and a full stop last."""
+    words = words.strip()
+    return f"{words[:1].upper()}{words[1:]}{'' if words.endswith('.') else '.'}"

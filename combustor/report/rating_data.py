@@ -30,6 +30,9 @@ def point_fields(points: Iterable[PointRating]) -> tuple[Field, ...]:
     )
 
 
+RATING_TABLES = ("points", "split", "zones", "profile", "walls", "findings")
+
+
 def rating_data(ratings: Ratings) -> tuple[Table, ...]:
     """Return every number of the ratings as tables, one CSV file each."""
     points = ratings.points

@@ -60,9 +60,10 @@ def rating_report(ratings: Ratings) -> tuple[Block, ...]:
 
 def duty_cycle(ratings: Ratings) -> Table:
     """Return the summary of all operating points."""
+    lines = [summary_row(point) for point in ratings.points]
     rows = tuple(
         {"row": row, "verdict": theme.verdict(row.level), "status": theme.status(row.point.status)}
-        for row in map(summary_row, ratings.points)
+        for row in lines
     )
     point = [field.beneath("row.point") for field in select(fields.POINT, "name")]
     columns = (
@@ -80,7 +81,7 @@ def duty_cycle(ratings: Ratings) -> Table:
         _PEAK.beneath("row"),
         _VERDICT,
     )
-    marks = {i: row["row"].level for i, row in enumerate(rows) if row["row"].level != "ok"}
+    marks = {i: line.level for i, line in enumerate(lines) if line.level != "ok"}
     return Table("summary", "Duty cycle (NOx, CO: dry, 15 % O2)", columns, rows, marks)
 
 

@@ -2,36 +2,35 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from typing import Any
 
 from combustor.base.method import Method
+from combustor.case.schema import Case
 from combustor.report import fields
 from combustor.report.cautions import cautions
 from combustor.report.document import Block, Facts, Heading, Prose, Table
 from combustor.report.field import Field, row, select
 from combustor.report.json_out import findings_list
-from combustor.report.rating_rows import rows_of_split
+from combustor.report.rating_rows import SplitRow, rows_of_split
 from combustor.report.rating_tables import findings_table
 from combustor.sizing.record import Design, Dimension
 
 
-def sizing_report(
-    design: Design, title: str, air_flow: float, fuel_cautions: tuple[str, ...]
-) -> tuple[Block, ...]:
-    """Return the whole report of a sized case; ``air_flow`` at the design point, kg/s."""
+def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> tuple[Block, ...]:
+    """Return the whole report of a sized case."""
     done = "converged" if design.converged else "! not converged"
     facts = (
         ("pressure loss", _loss_words(design)),
         ("fuel flow", f"{design.fuel_flow:.4f} kg/s at the design point"),
         ("solve", f"{done} in {design.convergence.iterations} passes"),
     )
-    split = rows_of_split(design.split, design.hardware, air_flow)
     return (
-        Heading(f"{title}: sized" if title else "Sized"),
+        Heading(f"{case.title}: sized" if case.title else "Sized"),
         Facts(facts),
         dimensions_table(design),
         Table("zones", "Zones at the design point", fields.ZONE_TARGETS, design.zones),
-        Table("split", "Air split at the design point", fields.SPLIT, split),
+        Table("split", "Air split at the design point", fields.SPLIT, _split(design, case)),
         findings_table([("", finding) for finding in design.findings]),
         Heading("Before use"),
         *(Prose(line) for line in cautions(fuel_cautions)),
@@ -60,14 +59,13 @@ def dimensions_table(design: Design) -> Table:
     return Table("dimensions", "Dimensions", columns, records)
 
 
-def sizing_data(design: Design, air_flow: float) -> tuple[Table, ...]:
+def sizing_data(design: Design, case: Case) -> tuple[Table, ...]:
     """Return every number of the design as tables, one CSV file each."""
     lines = tuple(dimension_values(dimension) for dimension in design.dimensions)
-    split = rows_of_split(design.split, design.hardware, air_flow)
     return (
         Table("dimensions", "Dimensions", fields.DIMENSIONS, lines),
         Table("zones", "Zones", fields.ZONE_TARGETS, design.zones),
-        Table("split", "Air split", fields.SPLIT, split),
+        Table("split", "Air split", fields.SPLIT, _split(design, case)),
         Table("findings", "Findings", fields.FINDINGS, design.findings),
     )
 
@@ -75,22 +73,19 @@ def sizing_data(design: Design, air_flow: float) -> tuple[Table, ...]:
 SIZING_TABLES = ("dimensions", "zones", "split", "findings")
 
 
-def design_document(
-    design: Design, title: str, air_flow: float, version: str, case_sha256: str
-) -> dict[str, Any]:
+def design_document(design: Design, case: Case, version: str) -> dict[str, Any]:
     """Return the document of ``size --json``."""
-    split = rows_of_split(design.split, design.hardware, air_flow)
     return {
-        "title": title,
+        "title": case.title,
         "version": version,
-        "case_sha256": case_sha256,
+        "case_sha256": case.sha256,
         "converged": design.converged,
         "pressure_loss_percent": 100.0 * design.split.pressure_loss,
         "pressure_loss_target_percent": 100.0 * design.pressure_loss_target,
         "fuel_flow_kg_s": design.fuel_flow,
         "dimensions": [dimension_values(dimension) for dimension in design.dimensions],
         "zones": [row(fields.ZONE_TARGETS, zone) for zone in design.zones],
-        "split": [row(fields.SPLIT, line) for line in split],
+        "split": [row(fields.SPLIT, line) for line in _split(design, case)],
         "findings": findings_list(design.findings),
     }
 
@@ -112,6 +107,11 @@ def dimension_values(dimension: Dimension) -> dict[str, Any]:
         "candidate_source": None if rival is None else rival.method.citation,
         "candidate_reason": None if rival is None else rival.reason,
     }
+
+
+def _split(design: Design, case: Case) -> tuple[SplitRow, ...]:
+    air_flow = case.point(case.targets.design_point).air_flow
+    return rows_of_split(design.split, design.hardware, air_flow)
 
 
 def _value_text(dimension: Dimension, value: float) -> str:

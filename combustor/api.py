@@ -1,0 +1,79 @@
+"""The public calls that take a case or a name and find fuel and mechanism themselves."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from combustor.case.schema import Case
+    from combustor.fuel.record import Fuel
+    from combustor.rating.record import Ratings
+    from combustor.sizing.record import Design
+    from combustor.studies.flame import Flame
+
+
+def fuel_of(case: Case) -> Fuel:
+    """Return the fuel a case states, under the mechanism it states or the tool's choice."""
+    from combustor.fuel import catalogue
+
+    if case.fuel.name is not None:
+        return catalogue.find(case.fuel.name, case.model.mechanism)
+    return catalogue.from_composition(case.fuel.composition or {}, case.model.mechanism)
+
+
+def find_fuel(name: str, mechanism: str | None = None) -> Fuel:
+    """Return a fuel by catalogue name or blend, e.g. ``"natural-gas+30%hydrogen"``."""
+    from combustor.fuel import catalogue
+
+    return catalogue.find(name, mechanism)
+
+
+def size(case: Case) -> Design:
+    """Size the metal of a case.
+
+    Raises
+    ------
+    InfeasibleError
+        When no metal meets the targets; carries the chain of causes.
+    """
+    from combustor.fuel.gas import Gas
+    from combustor.sizing import size as size_case
+
+    fuel = fuel_of(case)
+    return size_case(case, fuel, Gas.load(fuel.mechanism))
+
+
+def rate(
+    case: Case,
+    fuel: str | None = None,
+    points: Sequence[str] | None = None,
+    mechanism: str | None = None,
+) -> Ratings:
+    """Rate the metal of a case; a case without metal is sized first.
+
+    Parameters
+    ----------
+    case : Case
+    fuel : str, optional
+        Catalogue name or blend to burn in place of the case's own fuel.
+    points : sequence of str, optional
+        Names of the operating points wanted; all when left out.
+    mechanism : str, optional
+        Cantera file in place of the tool's choice.
+    """
+    from combustor.rating.rate import rate_case
+
+    return rate_case(case, fuel_name=fuel, points=points, mechanism=mechanism)
+
+
+def flame(fuel: str | Fuel, **conditions: Any) -> Flame:
+    """Look at one flame: equilibrium, and a stirred reactor where a time is given.
+
+    Takes the conditions of :func:`combustor.studies.flame.flame`, SI.
+    """
+    from combustor.fuel.gas import Gas
+    from combustor.studies.flame import flame as look
+
+    burnt = find_fuel(fuel) if isinstance(fuel, str) else fuel
+    return look(burnt, Gas.load(burnt.mechanism), **conditions)

@@ -1,0 +1,175 @@
+"""What each command does: read, call, hand the result to the report."""
+
+from __future__ import annotations
+
+import argparse
+import sys
+from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass
+from pathlib import Path
+
+import combustor
+from combustor.base.errors import EXIT_GOOD, EXIT_LIMIT
+from combustor.cli import quantities
+from combustor.report.csv_out import check_free, write_csv
+from combustor.report.document import Block, Table
+from combustor.report.json_out import dumps
+from combustor.report.terminal import Page, render
+
+
+@dataclass(frozen=True)
+class Answer:
+    """Text for stdout, the exit code, and lines for stderr."""
+
+    text: str
+    code: int = EXIT_GOOD
+    notes: tuple[str, ...] = ()
+
+
+def answer(arguments: argparse.Namespace) -> Answer:
+    """Run the command that was parsed."""
+    return _COMMANDS[arguments.command](arguments)
+
+
+def new(arguments: argparse.Namespace) -> Answer:
+    """Write a starter case."""
+    from combustor.case.starter import starter_text
+    from combustor.case.write import write_case
+    from combustor.fuel import catalogue
+
+    path = Path(arguments.file)
+    check_free([path], arguments.force)
+    catalogue.find(arguments.fuel)
+    write_case(
+        path, starter_text(layout=arguments.layout, fuel=arguments.fuel), force=arguments.force
+    )
+    if arguments.json:
+        document = {"file": str(path), "layout": arguments.layout, "fuel": arguments.fuel}
+        return Answer(f"{dumps(document)}\n")
+    return Answer(f"wrote {path}; next: combustor rate {path}\n")
+
+
+def size(arguments: argparse.Namespace) -> Answer:
+    """Size the metal of a case."""
+    from combustor.case.write import write_case
+    from combustor.report import sizing_tables as report
+
+    case = combustor.load_case(arguments.case)
+    _check_csv(arguments, report.SIZING_TABLES)
+    if arguments.output:
+        check_free([Path(arguments.output)], arguments.force)
+    fuel = combustor.fuel_of(case)
+    design = combustor.size(case)
+    notes = _write_csv(arguments, report.sizing_data(design, case))
+    if arguments.output:
+        write_case(arguments.output, case, hardware=design.hardware, force=arguments.force)
+        notes += (f"wrote {arguments.output}",)
+    if case.hardware is not None:
+        notes += ("the case holds metal already: it was left out and sized anew",)
+    limit = not design.converged or any(f.level == "act" for f in design.findings)
+    text = (
+        f"{dumps(report.design_document(design, case, combustor.__version__))}\n"
+        if arguments.json
+        else _set(report.sizing_report(design, case, fuel.cautions))
+    )
+    return Answer(text, EXIT_LIMIT if limit else EXIT_GOOD, notes)
+
+
+def rate(arguments: argparse.Namespace) -> Answer:
+    """Rate the metal of a case at its operating points."""
+    from combustor.report.rating_data import RATING_TABLES, rating_data
+    from combustor.report.rating_json import ratings_document
+    from combustor.report.rating_rows import level_of
+    from combustor.report.rating_tables import rating_report
+
+    case = combustor.load_case(arguments.case)
+    _check_csv(arguments, RATING_TABLES)
+    ratings = combustor.rate(case, fuel=arguments.fuel, points=arguments.point)
+    notes = _write_csv(arguments, rating_data(ratings))
+    levels = [level_of(point) for point in ratings.points]
+    levels += [finding.level for finding in ratings.findings]
+    text = (
+        f"{dumps(ratings_document(ratings, combustor.__version__))}\n"
+        if arguments.json
+        else _set(rating_report(ratings))
+    )
+    return Answer(text, EXIT_LIMIT if "act" in levels else EXIT_GOOD, notes)
+
+
+def flame(arguments: argparse.Namespace) -> Answer:
+    """Look at one flame."""
+    from combustor.report import flame_tables as report
+
+    given = quantities.read_all(
+        {
+            "--phi": (quantities.PHI, arguments.phi),
+            "--temperature": (quantities.TEMPERATURE, arguments.temperature),
+            "--pressure": (quantities.PRESSURE, arguments.pressure),
+            "--time": (quantities.RESIDENCE_TIME, arguments.time),
+            "--fuel-temperature": (quantities.FUEL_TEMPERATURE, arguments.fuel_temperature),
+            "--humidity": (quantities.HUMIDITY, arguments.humidity),
+        }
+    )
+    _check_csv(arguments, report.FLAME_TABLES)
+    fuel = combustor.find_fuel(arguments.fuel, arguments.mechanism)
+    humidity = {} if given["--humidity"] is None else {"humidity": given["--humidity"]}
+    result = combustor.flame(
+        fuel,
+        equivalence_ratio=given["--phi"],
+        temperature=given["--temperature"],
+        pressure=given["--pressure"],
+        residence_time=given["--time"],
+        fuel_temperature=given["--fuel-temperature"],
+        **humidity,
+    )
+    notes = _write_csv(arguments, report.flame_data(result))
+    text = (
+        f"{dumps(report.flame_document(result))}\n"
+        if arguments.json
+        else _set(report.flame_report(result, fuel))
+    )
+    good = result.stirred is None or result.stirred.status == "burning"
+    return Answer(text, EXIT_GOOD if good else EXIT_LIMIT, notes)
+
+
+def fuels(arguments: argparse.Namespace) -> Answer:
+    """Show the fuel catalogue or one fuel."""
+    from combustor.fuel import catalogue
+    from combustor.report import fuel_tables as report
+
+    _check_csv(arguments, report.FUEL_TABLES)
+    names = catalogue.names() if arguments.name is None else (arguments.name,)
+    found = tuple(catalogue.find(name) for name in names)
+    notes = _write_csv(arguments, report.fuels_data(found))
+    if arguments.json:
+        text = f"{dumps(report.fuels_document(found, combustor.__version__))}\n"
+    elif arguments.name is None:
+        text = _set([report.fuels_table(found)])
+    else:
+        text = _set(report.fuel_report(found[0]))
+    return Answer(text, EXIT_GOOD, notes)
+
+
+_COMMANDS: dict[str, Callable[[argparse.Namespace], Answer]] = {
+    "new": new,
+    "size": size,
+    "rate": rate,
+    "flame": flame,
+    "fuels": fuels,
+}
+
+
+def _set(blocks: Iterable[Block]) -> str:
+    return render(blocks, Page.of(sys.stdout)).lstrip("\n")
+
+
+def _check_csv(arguments: argparse.Namespace, names: Sequence[str]) -> None:
+    if arguments.csv is not None:
+        check_free((Path(arguments.csv) / f"{name}.csv" for name in names), arguments.force)
+
+
+def _write_csv(arguments: argparse.Namespace, tables: Iterable[Table]) -> tuple[str, ...]:
+    if arguments.csv is None:
+        return ()
+    paths = write_csv(tables, Path(arguments.csv), arguments.force)
+    return tuple(f"wrote {path}" for path in paths)
