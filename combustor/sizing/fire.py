@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from combustor.base.errors import InfeasibleError
 from combustor.base.method import Method
-from combustor.fuel.gas import Gas
+from combustor.fuel.gas import Gas, GasState
 from combustor.fuel.record import Fuel
 
 Array = NDArray[np.float64]
@@ -56,27 +56,41 @@ class Supply:
 
 @dataclass(frozen=True)
 class HotGas:
-    """Equilibrium products by equivalence ratio; arrays of equal length, linear between."""
+    """Equilibrium products; arrays of equal length, or single values.
+
+    Parameters
+    ----------
+    equivalence_ratio, temperature : ndarray
+        [-], [K]
+    gas_constant, heat_capacity_ratio : ndarray
+        [J/(kg K)], [-]
+    x_h2o, x_co2 : ndarray
+        Mole fractions, wet [-]
+    """
 
     equivalence_ratio: Array
     temperature: Array
     gas_constant: Array
     heat_capacity_ratio: Array
+    x_h2o: Array
+    x_co2: Array
 
-    def at(self, equivalence_ratio: Array | float) -> tuple[Array, Array, Array]:
-        """Return temperature [K], gas constant [J/(kg K)] and heat capacity ratio."""
+    def at(self, equivalence_ratio: Array | float) -> HotGas:
+        """Return the products at other equivalence ratios, linear between those known."""
         nodes = self.equivalence_ratio
-        return (
-            np.asarray(np.interp(equivalence_ratio, nodes, self.temperature)),
-            np.asarray(np.interp(equivalence_ratio, nodes, self.gas_constant)),
-            np.asarray(np.interp(equivalence_ratio, nodes, self.heat_capacity_ratio)),
+        wanted = np.asarray(equivalence_ratio, dtype=float)
+        columns = (
+            self.temperature,
+            self.gas_constant,
+            self.heat_capacity_ratio,
+            self.x_h2o,
+            self.x_co2,
         )
+        return HotGas(wanted, *(np.asarray(np.interp(wanted, nodes, y)) for y in columns))
 
 
-def burn_to_equilibrium(
-    gas: Gas, fuel: Fuel, supply: Supply, fuel_air_ratio: float
-) -> tuple[float, float, float]:
-    """Return temperature [K], gas constant [J/(kg K)] and heat capacity ratio of the products.
+def burn_to_equilibrium(gas: Gas, fuel: Fuel, supply: Supply, fuel_air_ratio: float) -> GasState:
+    """Return the products of a mixture at equilibrium.
 
     Parameters
     ----------
@@ -92,20 +106,22 @@ def burn_to_equilibrium(
     fuel_enthalpy = gas.enthalpy(supply.fuel_temperature, supply.pressure, pure)
     mixture = (air + per_moist * pure) / (1.0 + per_moist)
     enthalpy = (air_enthalpy + per_moist * fuel_enthalpy) / (1.0 + per_moist)
-    state = gas.equilibrium(enthalpy, supply.pressure, mixture)
-    constant = gas.gas_constant(state.mass_fractions)
-    ratio = gas.heat_capacity_ratio(state.temperature, supply.pressure, state.mass_fractions)
-    return state.temperature, constant, ratio
+    return gas.equilibrium(enthalpy, supply.pressure, mixture)
 
 
 def hot_gas(gas: Gas, fuel: Fuel, supply: Supply) -> HotGas:
     """Return the table of equilibrium products from pure air to three times stoichiometric."""
     stoichiometric = fuel.stoichiometric_fuel_air_ratio
-    rows = [
-        burn_to_equilibrium(gas, fuel, supply, node * stoichiometric) for node in _EQUIVALENCE_NODES
-    ]
-    temperature, constant, ratio = (np.array(column) for column in zip(*rows, strict=True))
-    return HotGas(np.array(_EQUIVALENCE_NODES), temperature, constant, ratio)
+    water, carbon_dioxide = gas.index("H2O"), gas.index("CO2") if gas.has("CO2") else None
+    rows = []
+    for node in _EQUIVALENCE_NODES:
+        state = burn_to_equilibrium(gas, fuel, supply, node * stoichiometric)
+        made = state.mass_fractions
+        ratio = gas.heat_capacity_ratio(state.temperature, state.pressure, made)
+        moles = gas.mole_fractions(made)
+        carbon = 0.0 if carbon_dioxide is None else moles[carbon_dioxide]
+        rows.append((state.temperature, gas.gas_constant(made), ratio, moles[water], carbon))
+    return HotGas(np.array(_EQUIVALENCE_NODES), *np.array(rows).T)
 
 
 def fuel_air_ratio_for(
@@ -166,7 +182,8 @@ def fuel_air_ratio_for(
     slope = max(slope / 0.02, 1.0)
     stoichiometric = fuel.stoichiometric_fuel_air_ratio
     for _ in range(30):
-        miss = exit_temperature - burn_to_equilibrium(gas, fuel, supply, guess * stoichiometric)[0]
+        state = burn_to_equilibrium(gas, fuel, supply, guess * stoichiometric)
+        miss = exit_temperature - state.temperature
         if abs(miss) < 1e-6 * exit_temperature:
             break
         # steps stay short near the summit, where the slope vanishes

@@ -1,0 +1,162 @@
+"""Primary, secondary and dilution rows: count, hole diameter, penetration, pitch."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+from combustor.airflow.jets import HOLE_NUMBER, PENETRATION, PENETRATION_ROW, penetration_row
+from combustor.base.method import Method
+from combustor.sizing.section import Section
+
+ROW_COUNT = Method(
+    key="row-count-penetration",
+    quantity="number of holes in a row",
+    source="jets of the size that reaches 0.33 liner diameters (can) or 0.4 liner heights "
+    "(ring): penetration of Norster 1964, as quoted by Lefebvre 1983, with n d^2 from continuity",
+    reading="from memory",
+    validity={"momentum_flux_ratio": (5.0, 105.0)},
+)
+HOLDEMAN_COUNT = Method(
+    key="row-count-holdeman",
+    quantity="number of holes in a row for the best mixing",
+    source="Holdeman 1993, Prog. Energy Combust. Sci. 19: n = pi sqrt(2 J)/2.5 in a can",
+    reading="from memory",
+    validity={"momentum_flux_ratio": (5.0, 105.0)},
+)
+ROW_PITCH = Method(
+    key="row-pitch",
+    quantity="pitch over hole diameter along a row",
+    source="ligament of at least half a diameter; one diameter aimed at",
+    reading="common practice, no source",
+    validity={"pitch_over_diameter": (1.5, math.inf)},
+)
+ROW_POSITION = Method(
+    key="row-position",
+    quantity="position of a row along the liner",
+    source="primary row closes its zone, secondary row stands a third into its zone, dilution "
+    "row opens its zone",
+    reading="judgement",
+)
+
+PENETRATION_ROUND, PENETRATION_RING = 0.33, 0.40
+LEAST_COUNT = 4
+AIMED_PITCH, LEAST_PITCH = 2.0, 1.5
+WEAK_MOMENTUM_RATIO = 10.0
+
+METHODS_BEHIND = (HOLE_NUMBER, PENETRATION, PENETRATION_ROW)
+
+
+@dataclass(frozen=True)
+class RowConditions:
+    """What one can's row of jets meets.
+
+    Parameters
+    ----------
+    jet_flow, gas_flow : float
+        All jets of the row, and hot gas reaching it, per can [kg/s]
+    jet_velocity, jet_density : float
+        [m/s], [kg/m3]
+    discharge_coefficient : float
+    momentum_ratio : float
+        J, jet over local hot gas [-]
+    """
+
+    jet_flow: float
+    gas_flow: float
+    jet_velocity: float
+    jet_density: float
+    discharge_coefficient: float
+    momentum_ratio: float
+
+
+@dataclass(frozen=True)
+class RowPlan:
+    """Count and size of a row.
+
+    ``free_count`` is what the penetration rule asks before rounding and bounds;
+    ``best_mixing_count`` is Holdeman's. ``bound`` says what held the count, if anything.
+    Lengths in m; ``penetration`` is that of the whole count.
+    """
+
+    count: int
+    free_count: float
+    best_mixing_count: float
+    hole_diameter: float
+    penetration: float
+    bound: str = ""
+
+
+def wanted_penetration(section: Section, liner_height: float) -> float:
+    """Return the depth jets are to reach [m]."""
+    share = PENETRATION_ROUND if section.is_round else PENETRATION_RING
+    return share * liner_height
+
+
+def holes_times_diameter_squared(conditions: RowConditions) -> float:
+    """Return number of jets times jet diameter squared, n d^2 = (4/pi) m/(rho V) [m2]."""
+    flux = conditions.jet_density * conditions.jet_velocity
+    return 4.0 / math.pi * conditions.jet_flow / flux
+
+
+def best_mixing_count(momentum_ratio: float) -> float:
+    """Return Holdeman's number of holes round a can, pi sqrt(2 J)/2.5 [-]."""
+    return math.pi * math.sqrt(2.0 * momentum_ratio) / 2.5
+
+
+def plan_row(
+    conditions: RowConditions,
+    section: Section,
+    liner_height: float,
+    stated_count: int | None = None,
+) -> RowPlan:
+    """Return count and hole diameter of a row.
+
+    Parameters
+    ----------
+    conditions : RowConditions
+    section : Section
+    liner_height : float
+        Liner diameter or ring height [m]
+    stated_count : int or None
+        The user's own count.
+
+    Returns
+    -------
+    RowPlan
+    """
+    depth = wanted_penetration(section, liner_height)
+    per_diameter = penetration_row(
+        1.0, conditions.momentum_ratio, conditions.gas_flow, conditions.jet_flow
+    )
+    squared = holes_times_diameter_squared(conditions)
+    free = squared / (depth / per_diameter) ** 2
+    drilled_squared = squared / conditions.discharge_coefficient
+    perimeter = section.perimeter(liner_height)
+    most = max(int(perimeter**2 / (AIMED_PITCH**2 * drilled_squared)), LEAST_COUNT)
+    count, bound = _bounded(free, most)
+    if stated_count is not None:
+        count, bound = stated_count, "count stated in the case"
+    jet = math.sqrt(squared / count)
+    return RowPlan(
+        count=count,
+        free_count=free,
+        best_mixing_count=best_mixing_count(conditions.momentum_ratio),
+        hole_diameter=math.sqrt(drilled_squared / count),
+        penetration=per_diameter * jet,
+        bound=bound,
+    )
+
+
+def pitch_over_diameter(perimeter: float, count: int, diameter: float) -> float:
+    """Return hole pitch round the wall over hole diameter [-]."""
+    return perimeter / (count * diameter)
+
+
+def _bounded(free: float, most: int) -> tuple[int, str]:
+    count = max(round(free), 1)
+    if count > most:
+        return most, f"pitch of {AIMED_PITCH:.0f} diameters allows no more"
+    if count < LEAST_COUNT:
+        return LEAST_COUNT, f"at least {LEAST_COUNT} holes to close the ring"
+    return count, ""
