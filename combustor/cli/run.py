@@ -17,10 +17,13 @@ BROKEN_PIPE = 141
 
 def main(argv: Sequence[str] | None = None) -> int:
     """Run the command line ``argv`` (default: the process's own) and return the exit code."""
+    if sys.stdout is None:
+        from pathlib import Path
+
+        sys.stdout = Path(os.devnull).open("w", encoding="utf-8")  # noqa: SIM115
     try:
         code = _run(sys.argv[1:] if argv is None else list(argv))
-        if sys.stdout is not None:
-            sys.stdout.flush()
+        sys.stdout.flush()
     except BrokenPipeError:
         _silence_stdout()
         return BROKEN_PIPE
@@ -68,8 +71,7 @@ def _answer(arguments: argparse.Namespace) -> int:
         return INTERNAL_ERROR
     if answered.notes:
         _complain("\n".join(answered.notes))
-    if sys.stdout is not None:
-        sys.stdout.write(answered.text)
+    sys.stdout.write(answered.text)
     return answered.code
 
 
@@ -80,8 +82,6 @@ def _complain(text: str) -> None:
 
 def _silence_stdout() -> None:
     # Else the interpreter tries to flush what nobody reads and reports that at exit.
-    if sys.stdout is None:
-        return
     try:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
     except (OSError, ValueError):
