@@ -6,14 +6,14 @@ Every function takes and returns SI floats or arrays. Mach numbers are subsonic.
 from __future__ import annotations
 
 import math
-from typing import Any, TypeVar
+from typing import Any, TypeAlias
 
 import numpy as np
-from numpy.typing import NDArray
 
 from combustor.base.method import Method
 
-Number = TypeVar("Number", float, NDArray[np.float64])
+# A float or an array of floats; arguments broadcast against each other.
+Number: TypeAlias = Any
 
 COMPRESSIBLE_ORIFICE = Method(
     key="orifice-compressible",
@@ -162,7 +162,7 @@ def jet_velocity(
 
 def throat_ratio(pressure: Number, receiver_pressure: Number, gamma: Number) -> Number:
     """Return static over driving pressure in the throat: the receiver's, critical at least."""
-    ratio: Any = np.minimum(receiver_pressure / pressure, 1.0)
+    ratio = np.minimum(receiver_pressure / pressure, 1.0)
     return np.maximum(ratio, critical_pressure_ratio(gamma))
 
 

@@ -27,7 +27,7 @@ JET_ANGLE = Method(
     source="sin^2(angle) = Cd / Cd at rest, Kaddah 1964 as quoted by Lefebvre 1983",
     reading="from memory",
     validity={"head_ratio": (1.0, math.inf)},
-    note="the velocity triangle at no bleed, sin(angle) = Cd / Cd at rest, lies 13 deg lower at K 2",
+    note="the velocity triangle at no bleed, sin(angle) = Cd / Cd at rest, is 13 deg lower at K 2",
 )
 DEFAULT_DISCHARGE = Method(
     key="discharge-coefficient-default",
@@ -60,7 +60,7 @@ SHARP = math.pi / (math.pi + 2.0)
 
 
 def discharge_coefficient_crossflow(
-    head_ratio: Number, bleed_ratio: Number, limit: float = PLAIN_LIMIT
+    head_ratio: Number, bleed_ratio: Number, limit: Number = PLAIN_LIMIT
 ) -> Number:
     """Return the discharge coefficient of a hole with annulus flow across it.
 
