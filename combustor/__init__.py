@@ -17,7 +17,8 @@ if TYPE_CHECKING:
         InputError,
         NotConvergedError,
     )
-    from combustor.case import Case, load_case, write_case
+    from combustor.case import Case, load_case
+    from combustor.case.write import write_case
     from combustor.fuel.record import Fuel
     from combustor.rating.record import PointRating, Ratings
     from combustor.report.frame import frame
@@ -42,7 +43,7 @@ _HOMES = {
     "load_case": "combustor.case",
     "rate": "combustor.api",
     "size": "combustor.api",
-    "write_case": "combustor.case",
+    "write_case": "combustor.case.write",
 }
 
 __all__ = [
