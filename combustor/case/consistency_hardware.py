@@ -33,6 +33,7 @@ def hardware_problems(document: Row, report: Reporter) -> Iterator[Problem]:
     yield from _zones(hardware, report)
     yield from _openings(hardware, report)
     yield from _injectors(hardware, report)
+    yield from _underivable(table(document, "combustor") or {}, hardware, report)
 
 
 def _passages(hardware: Row, report: Reporter) -> Iterator[Problem]:
@@ -267,3 +268,37 @@ def _injectors(hardware: Row, report: Reporter) -> Iterator[Problem]:
         yield report.problem(
             ("hardware", "injectors"), f"the shares sum to {100 * total:.8g} %", "100 % is needed"
         )
+
+
+def _underivable(combustor: Row, hardware: Row, report: Reporter) -> Iterator[Problem]:
+    """What is left out must follow from diameters or from ``[combustor]``."""
+    path: Path = ("hardware",)
+    diffuser = table(hardware, "diffuser") or {"inlet_area": 0.0}
+    if not stated(hardware, "exit_area") and not stated(combustor, "exit_annulus"):
+        yield report.problem((*path, "exit_area"), "missing", "or state combustor.exit_annulus")
+    if not stated(diffuser, "inlet_area") and not stated(combustor, "inlet_annulus"):
+        yield report.problem(
+            (*path, "diffuser", "inlet_area"), "missing", "or state combustor.inlet_annulus"
+        )
+    if stated(table(hardware, "liner") or {}, "area"):
+        yield from _unstated(path, hardware, ("liner_height",), report)
+        for index, wall in tables(hardware, "walls"):
+            yield from _unstated((*path, "walls", index), wall, ("perimeter",), report)
+    annuli = tables(hardware, "annuli")
+    if any(stated(annulus, "area") for _, annulus in annuli):
+        has_ring = combustor.get("layout") == "can-annular" and all(
+            stated(combustor, key) for key in ("casing_outer_diameter", "casing_inner_diameter")
+        )
+        if not has_ring:
+            wanted = ("reference_area", "reference_height")
+            yield from _unstated(path, hardware, wanted, report)
+        for index, wall in tables(hardware, "walls"):
+            yield from _unstated((*path, "walls", index), wall, ("casing_area_ratio",), report)
+
+
+def _unstated(path: Path, node: Row, keys: tuple[str, ...], report: Reporter) -> Iterator[Problem]:
+    for key in keys:
+        if not stated(node, key):
+            yield report.problem(
+                (*path, key), "missing", "it does not follow from areas: state it, or diameters"
+            )

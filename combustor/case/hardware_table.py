@@ -141,6 +141,7 @@ class HardwareTable(Table):
     reference_area: k.Area | None = None
     reference_height: k.Diameter | None = None
     exit_area: k.Area | None = None
+    transition_length: k.DuctLength | None = None
     roughness: k.Roughness = 1.5e-6
     liner: PassageTable
     annuli: tuple[AnnulusTable, ...] = Field(min_length=1, max_length=2)

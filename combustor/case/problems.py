@@ -76,8 +76,21 @@ class Reporter:
 
     def from_schema(self, error: ValidationError, root: type[BaseModel]) -> Iterator[Problem]:
         """Yield a problem for every error the schema found."""
-        for detail in error.errors(include_url=False):
-            yield self._from_detail(detail, root)
+        details = error.errors(include_url=False)
+        problems = [
+            (detail, self._from_detail(detail, root))
+            for detail in details
+            # a list whose rows all failed is not a list that is empty
+            if not (detail["type"] == "too_short" and detail["input"])
+        ]
+        misspelt = {
+            (*detail["loc"][:-1], problem.nearest)
+            for detail, problem in problems
+            if detail["type"] == "extra_forbidden"
+        }
+        for detail, problem in problems:
+            if not (detail["type"] == "missing" and tuple(detail["loc"]) in misspelt):
+                yield problem
 
     def _from_detail(self, detail: ErrorDetails, root: type[BaseModel]) -> Problem:
         path: Path = tuple(part for part in detail["loc"] if part != "[key]")

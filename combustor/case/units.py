@@ -242,7 +242,8 @@ def _from_pint(name: str) -> Unit | None:
             if unit.is_compatible_with(si):
                 factor = registry.Quantity(1.0, unit).to(si).magnitude
                 return Unit(dimension, Fraction(Decimal(repr(float(factor)))))
+        kind = str(unit.dimensionality)
+        return Unit(kind.strip("[]") if kind.count("[") == 1 else "another kind", Fraction(1))
     except Exception:
         # pint raises a different class for every way a text can fail to be a unit
         return None
-    return None
