@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from combustor.base.method import Method
+from combustor.emissions.bases import CH4_MOLAR_MASS, CO_MOLAR_MASS
 from combustor.fuel.composition import oxygen_demand
 from combustor.fuel.heating_value import iso_heat_of
 
@@ -72,3 +73,29 @@ def heat_left(gas: Mapping[str, float], methane: float) -> float:
     unburnt = {species: gas.get(species, 0.0) for species in ("CO", "H2", "NH3")}
     unburnt["CH4"] = methane
     return sum(share * iso_heat_of(species).lower for species, share in unburnt.items())
+
+
+def efficiency_from_indices(
+    ei_co: float, ei_uhc: float, lower_heating_value: float, uhc_heating_value: float | None = None
+) -> float:
+    """Return combustion efficiency from measured emission indices of CO and hydrocarbons.
+
+    Parameters
+    ----------
+    ei_co, ei_uhc : float
+        kg per kg fuel.
+    lower_heating_value : float
+        Of the fuel, J/kg.
+    uhc_heating_value : float, optional
+        Of the hydrocarbons on the basis of ``ei_uhc``, J/kg; methane when not given. Aircraft
+        practice counts them as the fuel.
+
+    Source
+    ------
+    ``COMBUSTION_EFFICIENCY``.
+    """
+    if uhc_heating_value is None:
+        uhc_heating_value = iso_heat_of("CH4").lower / CH4_MOLAR_MASS
+    co_heating_value = iso_heat_of("CO").lower / CO_MOLAR_MASS
+    left = ei_co * co_heating_value + ei_uhc * uhc_heating_value
+    return 1.0 - left / lower_heating_value
