@@ -17,7 +17,6 @@ from pydantic import ValidationError
 
 from combustor.base.errors import InputError, Problem
 from combustor.case.consistency import consistency_problems
-from combustor.case.lines import line_index
 from combustor.case.problems import Reporter, key_text
 from combustor.case.reading import named
 from combustor.case.schema import Case
@@ -144,11 +143,7 @@ def validate(document: Mapping[str, Any], text: str = "", name: str | None = Non
     if not document:
         advice = "`combustor new FILE` writes a case to start from"
         raise InputError(Problem("nothing is stated", advice, file=name))
-    try:
-        lines = line_index(text) if text else {}
-    except (RecursionError, IndexError):
-        lines = {}
-    report = Reporter(name, lines, document)
+    report = Reporter(name, text, document)
     problems: list[Problem] = []
     case: Case | None = None
     try:

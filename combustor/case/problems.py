@@ -5,13 +5,14 @@ from __future__ import annotations
 import difflib
 import typing
 from collections.abc import Iterator, Mapping
+from functools import cached_property
 from typing import Any
 
 from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails
 
 from combustor.base.errors import Problem
-from combustor.case.lines import Path, line_of
+from combustor.case.lines import Path, line_index, line_of
 
 _LONGEST_VALUE = 60
 
@@ -46,14 +47,20 @@ def _row_name(path: Path, document: Mapping[str, Any] | None) -> str | None:
 
 
 class Reporter:
-    """Makes problems that know their place in one text."""
+    """Makes problems that know their place in one text, which is searched only then."""
 
-    def __init__(
-        self, file: str | None, lines: Mapping[Path, int], document: Mapping[str, Any]
-    ) -> None:
+    def __init__(self, file: str | None, text: str, document: Mapping[str, Any]) -> None:
         self.file = file
-        self.lines = lines
+        self.text = text
         self.document = document
+
+    @cached_property
+    def lines(self) -> Mapping[Path, int]:
+        """Line of every path; empty where the text cannot be followed."""
+        try:
+            return line_index(self.text)
+        except (RecursionError, IndexError):
+            return {}
 
     def problem(
         self,

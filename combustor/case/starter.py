@@ -26,7 +26,8 @@ exit_annulus = { inner = "385 mm", outer = "456 mm" }    # diameters at turbine 
 transition_length = "200 mm"     # duct from the flame tube to the turbine
 
 [fuel]
-name = @FUEL@             # `combustor fuels` lists them; blends: "natural-gas+30%hydrogen"
+# `combustor fuels` lists the names; blends by volume: "natural-gas+30%hydrogen"
+name = @FUEL@
 temperature = "15 degC"
 # composition = { CH4 = "96 %", N2 = "4 %" }   # mole fractions, instead of a name
 

@@ -66,6 +66,7 @@ SI_UNIT = {
     "angle": "rad",
     "rate": "1/s",
     "time": "s",
+    "time": "s",
     "conductivity": "W/m/K",
     "ratio": "",
 }
@@ -120,6 +121,13 @@ _NAMES: dict[str, dict[Fraction | int | str, str]] = {
     "angle": {1: "rad", _DEGREE: "deg degree degrees °"},
     "rate": {1: "1/s s-1", 1000: "1/ms"},
     "time": {1: "s", Fraction(1, 1000): "ms", Fraction(1, 10**6): "us"},
+    "time": {
+        1: "s sec",
+        Fraction(1, 1000): "ms",
+        Fraction(1, 10**6): "us",
+        60: "min",
+        3600: "h",
+    },
     "conductivity": {1: "W/m/K W/m-K W/(m.K) W/(m*K) W/mK"},
     "ratio": {
         1: "kg/kg lb/lb mol/mol",

@@ -23,14 +23,16 @@ HEADING = (
 
 def write_case(
     path: str | os.PathLike[str],
-    case: Case,
+    case: Case | str,
     hardware: Mapping[str, Any] | None = None,
     force: bool = False,
 ) -> str:
-    """Write ``case`` to ``path``, with the metal ``hardware`` in it, and return the text.
+    """Write a case to ``path``, with the metal ``hardware`` in it, and return the text.
 
     Parameters
     ----------
+    case : Case or str
+        A case, or the text of one.
     hardware : mapping, optional
         The ``[hardware]`` table to put in (``hardware.to_case.table_of``).
     force : bool
@@ -41,7 +43,7 @@ def write_case(
     InputError
         The file is there and ``force`` is not given, or cannot be written.
     """
-    text = text_of(case)
+    text = case if isinstance(case, str) else text_of(case)
     if hardware is not None:
         text = complete(text, hardware)
     write_text(path, text, force)
@@ -53,10 +55,15 @@ def text_of(case: Case) -> str:
     import tomlkit
 
     if not case.text:
-        return tomlkit.dumps(_document(case))
+        return tomlkit.dumps(
+            _item(_plain(case.model_dump(exclude_none=True, exclude_defaults=True)))
+        )
     read = loads_case(case.text, case.file)
+    if read == case:
+        return case.text
     document = tomlkit.parse(case.text)
-    _merge(document, _differences(_document(read), _document(case), parse(case.text, case.file)))
+    written = parse(case.text, case.file)
+    _merge(document, _differences(_whole(read), _whole(case), written))
     return tomlkit.dumps(document)
 
 
@@ -133,11 +140,8 @@ def _mode_of(target: Path) -> int:
     return 0o666 & ~mask
 
 
-def _document(case: Case) -> dict[str, Any]:
-    """Return a case as plain tables of SI numbers, defaults left out."""
-    plain = _plain(case.model_dump(exclude_none=True, exclude_defaults=True))
-    assert isinstance(plain, dict)
-    return plain
+def _whole(case: Case) -> Any:
+    return _plain(case.model_dump(exclude_none=True))
 
 
 def _plain(node: Any) -> Any:
@@ -149,19 +153,23 @@ def _plain(node: Any) -> Any:
 
 
 def _differences(read: Any, wanted: Any, written: Any) -> Any:
-    """Return ``wanted`` with the user's own writing wherever it says the same."""
-    if read == wanted and written is not None:
+    """Return what the file should say: the user's own writing wherever that still holds.
+
+    ``read`` and ``wanted`` are the whole case, defaults included, as it was and as it is to
+    be; ``written`` is the document as the user wrote it.
+    """
+    if read == wanted:
         return written
-    if isinstance(wanted, dict) and isinstance(read, dict) and isinstance(written, dict):
-        kept = {key: value for key, value in written.items() if key not in read}
-        changed = {
-            key: _differences(read.get(key), value, written.get(key))
-            for key, value in wanted.items()
+    if isinstance(wanted, dict) and isinstance(read, dict):
+        written = written if isinstance(written, dict) else {}
+        return {
+            key: _differences(read.get(key), wanted[key], written.get(key))
+            for key in (*written, *(key for key in wanted if key not in written))
+            if key in wanted and (key in written or read.get(key) != wanted[key])
         }
-        return {k: v for k, v in kept.items() if k not in wanted} | changed
-    if isinstance(wanted, list) and isinstance(read, list) and isinstance(written, list):
-        if len(wanted) == len(read) == len(written):
-            return [_differences(r, w, t) for r, w, t in zip(read, wanted, written, strict=True)]
+    lists = isinstance(wanted, list) and isinstance(read, list) and isinstance(written, list)
+    if lists and len(wanted) == len(read) == len(written):
+        return [_differences(r, w, t) for r, w, t in zip(read, wanted, written, strict=True)]
     return wanted
 
 
