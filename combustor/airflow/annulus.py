@@ -59,7 +59,8 @@ class AnnulusGrid:
 
     ``draws`` (opening, node) is 1 where an opening is fed from beyond the node; ``dome_draw``
     (opening) marks the dome's openings where this annulus feeds the dome. ``row`` lists the
-    openings of this side and ``node`` the node just upstream of each.
+    openings of this side and ``node`` the node just upstream of each; ``heat`` is taken up on
+    the way to each node from the one before, W.
     """
 
     side: Literal["outer", "inner"]
@@ -142,24 +143,25 @@ def _last_flowing(draws: Array, dome_draw: Array | None) -> int:
 
 
 def _heat_on_grid(station: Array, heats: Sequence[AnnulusHeat], last: int) -> Array | None:
-    """Return the heat taken up from the entry to each node, W.
+    """Return the heat taken up on the way to each node from the one before, W.
 
     Heat given beyond the last row has no other way out than through that row's air.
     """
     if not heats:
         return None
-    total = np.zeros_like(station)
+    taken_up = np.zeros_like(station)
     direction = np.sign(station[-1] - station[0])
     for heat in heats:
         knots = np.asarray(heat.station, dtype=float)
         rate = np.asarray(heat.heat_rate, dtype=float)
         steps = 0.5 * (rate[1:] + rate[:-1]) * np.diff(knots)
-        along = _integral(station, knots, rate, steps)
-        taken_up = direction * (along - along[0])
+        along = direction * _integral(station, knots, rate, steps)
+        taken_up[1:] += np.diff(along)
         # Heat stated before the entry or past the end still goes into this air.
-        total += taken_up + (float(steps.sum()) - taken_up[-1])
-    total[last:] = total[-1]
-    return total
+        taken_up[last] += float(steps.sum()) - (along[-1] - along[0])
+    taken_up[last] += taken_up[last + 1 :].sum()
+    taken_up[last + 1 :] = 0.0
+    return taken_up
 
 
 def _integral(x: Array, knots: Array, rate: Array, steps: Array) -> Array:
@@ -195,7 +197,8 @@ def temperature_along(grid: AnnulusGrid, inlet: Inlet, mass_flow: Array) -> Arra
     if grid.heat is None:
         return np.full(grid.station.size, inlet.temperature)
     carrying = np.maximum(mass_flow, 1e-6 * inlet.mass_flow)
-    warmed: Array = inlet.temperature + grid.heat / (carrying * inlet.heat_capacity)
+    warming = grid.heat / (carrying * inlet.heat_capacity)
+    warmed: Array = inlet.temperature + np.cumsum(warming, axis=-1)
     return warmed
 
 

@@ -8,7 +8,7 @@ annulus's share of the dome air.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 
@@ -54,6 +54,7 @@ class Fields:
     annuli: tuple[AnnulusField, ...]
     liner: LinerField
     openings: OpeningState | None = None
+    dome_pressure: Array = field(default_factory=lambda: np.zeros(1))
     change: float = np.inf
 
 
@@ -174,8 +175,8 @@ def evaluate(machine: Machine, states: Array, fields: Fields, sweeps: int) -> tu
     head_pressure = states[:, count] * machine.inlet.pressure
     share = states[:, count + 1 :]
     air = tuple(
-        _air(machine, number, field, _annulus_flow(machine, number, flow, share), sweeps)
-        for number, field in enumerate(fields.annuli)
+        _air(machine, number, latest, _annulus_flow(machine, number, flow, share), sweeps)
+        for number, latest in enumerate(fields.annuli)
     )
     dome_pressure, dome_temperature, dome_gap = _dome_feed(machine, air, flow, share)
 
@@ -189,7 +190,7 @@ def evaluate(machine: Machine, states: Array, fields: Fields, sweeps: int) -> tu
         passage = _liner(machine, latest, state, flow, head_pressure)
         state = openings_at(passage)
     change = float(np.max(np.abs(passage.static_pressure - latest.static_pressure)))
-    fields = Fields(air, passage, state, change / machine.inlet.pressure)
+    fields = Fields(air, passage, state, dome_pressure, change / machine.inlet.pressure)
     inlet_flow = machine.inlet.mass_flow
     residual = np.concatenate(
         [
@@ -250,12 +251,12 @@ def _dome_feed(
         pressure = np.full(states, machine.dump_pressure)
         return pressure, np.full(states, machine.inlet.temperature), none
     ends = []
-    for field in annuli:
-        total = field.total_pressure[..., -1]
-        head = total - total * (field.static_pressure / field.total_pressure)[..., -1]
+    for side in annuli:
+        total = side.total_pressure[..., -1]
+        head = total - side.static_pressure[..., -1]
         ends.append(total - annulus.TURNING_LOSS * head)
     temperatures = [
-        np.broadcast_to(np.atleast_1d(field.temperature[..., -1]), (states,)) for field in annuli
+        np.broadcast_to(np.atleast_1d(side.temperature[..., -1]), (states,)) for side in annuli
     ]
     if not machine.shares_dome:
         return ends[0], temperatures[0], none
@@ -277,12 +278,12 @@ def _openings(
     static = total.copy()
     temperature = np.repeat(dome_temperature[:, None], shape[1], axis=1)
     upstream_flow = np.full(shape, np.inf)
-    for grid, field in zip(machine.annuli, annuli, strict=True):
+    for grid, side in zip(machine.annuli, annuli, strict=True):
         row, node = grid.row, grid.node
-        total[:, row] = field.total_pressure[..., node]
-        static[:, row] = field.static_pressure[..., node]
-        temperature[:, row] = field.temperature[..., node]
-        upstream_flow[:, row] = field.mass_flow[..., node]
+        total[:, row] = side.total_pressure[..., node]
+        static[:, row] = side.static_pressure[..., node]
+        temperature[:, row] = side.temperature[..., node]
+        upstream_flow[:, row] = side.mass_flow[..., node]
     return openings.opening_state(
         machine.laws,
         machine.inlet,
@@ -327,12 +328,13 @@ def single(fields: Fields) -> Fields:
     state = fields.openings
     return Fields(
         annuli=tuple(
-            AnnulusField(**{name: row(value) for name, value in vars(field).items()})
-            for field in fields.annuli
+            AnnulusField(**{name: row(value) for name, value in vars(side).items()})
+            for side in fields.annuli
         ),
         liner=LinerField(**{name: row(value) for name, value in vars(fields.liner).items()}),
         openings=None
         if state is None
         else OpeningState(**{name: row(value) for name, value in vars(state).items()}),
+        dome_pressure=fields.dome_pressure[:1],
         change=fields.change,
     )

@@ -137,7 +137,8 @@ def _problems(opening: Opening, hardware: Hardware) -> list[Problem]:
                     key,
                 )
             )
-        if opening.edge in CROSSFLOW_EDGES and opening.feed == "static":
+        crossflow = opening.edge in CROSSFLOW_EDGES and opening.side != "dome"
+        if crossflow and opening.feed == "static":
             problems.append(
                 Problem(
                     "the discharge law of this edge refers to annulus total pressure",

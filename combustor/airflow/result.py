@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Literal
 
@@ -46,7 +47,7 @@ class Inlet:
         return ratio * self.gas_constant / (ratio - 1.0)
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class LinerGas:
     """Mean gas inside the liner as the fire leaves it; linear between stations, flat beyond.
 
@@ -72,7 +73,7 @@ class LinerGas:
     fuel_station: float = 0.0
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class AnnulusHeat:
     """Heat given to the air of one annulus through the liner wall, whole machine.
 
@@ -125,7 +126,7 @@ class OpeningFlow:
     liner_pressure : float
         Static pressure in the liner that the row discharges to, Pa.
     driving_pressure : float
-        Pressure that drives the row, Pa.
+        Annulus total or static pressure that drives the row, Pa.
     """
 
     name: str
@@ -147,7 +148,7 @@ class OpeningFlow:
     driving_pressure: float
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class AnnulusStations:
     """One annulus along x; a row's station appears twice, before and after it (in x).
 
@@ -164,7 +165,7 @@ class AnnulusStations:
     temperature: Array
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class LinerStations:
     """Gas inside the liner along x; a row's station appears twice, before and after it.
 
@@ -199,7 +200,7 @@ class LossParts:
         return {"diffuser": self.diffuser, "liner": self.liner, "hot": self.hot}
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class AirSplit:
     """The solved air split.
 
@@ -231,7 +232,7 @@ class AirSplit:
 
     openings: tuple[OpeningFlow, ...]
     pressure_loss: float
-    pressure_loss_parts: dict[str, float]
+    pressure_loss_parts: Mapping[str, float]
     exit_pressure: float
     exit_static_pressure: float
     dump_pressure: float
