@@ -66,7 +66,6 @@ SI_UNIT = {
     "angle": "rad",
     "rate": "1/s",
     "time": "s",
-    "time": "s",
     "conductivity": "W/m/K",
     "ratio": "",
 }
@@ -120,7 +119,6 @@ _NAMES: dict[str, dict[Fraction | int | str, str]] = {
     "force": {1: "N", 1000: "kN", _POUND_FORCE: "lbf"},
     "angle": {1: "rad", _DEGREE: "deg degree degrees °"},
     "rate": {1: "1/s s-1", 1000: "1/ms"},
-    "time": {1: "s", Fraction(1, 1000): "ms", Fraction(1, 10**6): "us"},
     "time": {
         1: "s sec",
         Fraction(1, 1000): "ms",
