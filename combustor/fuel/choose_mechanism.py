@@ -11,6 +11,7 @@ from typing import Any
 import cantera as ct
 
 from combustor.base.errors import InputError, Problem
+from combustor.base.method import Method, Reading
 from combustor.fuel.mechanism import locate, shipped_folder
 
 
@@ -26,6 +27,7 @@ class Mechanism:
         Species it may be given as fuel; species a fuel may hold besides. Upper case.
     nitrogen_chemistry : bool
     source, reading, licence, note : str
+        ``reading`` in the words of `combustor.base.method.Reading`.
     cautions : tuple of str
         Always said.
     species_cautions : mapping of str to str
@@ -40,12 +42,13 @@ class Mechanism:
     carries: frozenset[str]
     nitrogen_chemistry: bool
     source: str
-    reading: str
+    reading: Reading
     licence: str
     note: str
     cautions: tuple[str, ...] = ()
     species_cautions: Mapping[str, str] = field(default_factory=dict)
     minor_share: float = 0.0
+    validity: Mapping[str, tuple[float, float]] = field(default_factory=dict)
 
     @property
     def path(self) -> Path:
@@ -55,6 +58,18 @@ class Mechanism:
             if folder.is_absolute() and (folder / self.file).is_file():
                 return (folder / self.file).resolve()
         return locate(self.file)
+
+    @property
+    def method(self) -> Method:
+        """The mechanism as a published method, for the table of sources and for notices."""
+        return Method(
+            key=f"mechanism-{Path(self.file).stem.lower()}",
+            quantity=f"reaction rates and thermodynamics ({self.name})",
+            source=self.source,
+            reading=self.reading,
+            validity=self.validity,
+            note=self.note,
+        )
 
     def cautions_for(self, composition: Mapping[str, float]) -> tuple[str, ...]:
         """Return what must be said when this mechanism burns that mixture (mole fractions)."""
@@ -111,6 +126,25 @@ def known_as(path: Path) -> Mechanism | None:
     return None
 
 
+def method_of(mechanism: str | Path) -> Method:
+    """Return the published method behind a mechanism file, a user's own included.
+
+    Its ``notices`` take ``pressure`` (Pa) and ``temperature`` (K) where the catalogue states a
+    range for them (see ``validity``).
+    """
+    path = Path(mechanism)
+    known = known_as(path)
+    if known is not None:
+        return known.method
+    return Method(
+        key=f"mechanism-{path.stem.lower()}",
+        quantity=f"reaction rates and thermodynamics ({path.name})",
+        source=f"the user's own file {path.name}",
+        reading="judgement",
+        note="its validity is the user's to judge",
+    )
+
+
 def _refusal(wanted: set[str], known: tuple[Mechanism, ...]) -> Problem:
     burnable = frozenset[str]().union(*(m.burns | m.carries for m in known))
     nowhere = sorted(wanted - burnable)
@@ -144,4 +178,8 @@ def _mechanism(row: dict[str, Any]) -> Mechanism:
         cautions=tuple(row["cautions"]),
         species_cautions=row.get("species_cautions", {}),
         minor_share=row.get("minor_share", 0.0),
+        validity={
+            key.partition("_")[0]: (float(low), float(high))
+            for key, (low, high) in row.get("validity", {}).items()
+        },
     )

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+from typing import get_args
+
 import cantera as ct
 import pytest
 
 from combustor.base.errors import InputError
+from combustor.base.method import Reading
 from combustor.fuel import catalogue, choose_mechanism
 from combustor.fuel.gas import Gas
 
@@ -48,6 +51,7 @@ def test_catalogue_of_mechanisms_is_true(mechanism):
     gas = Gas.load(mechanism.path)
     assert all(gas.has(species) for species in mechanism.burns | mechanism.carries)
     assert gas.has("NO") is mechanism.nitrogen_chemistry
+    assert mechanism.reading in get_args(Reading)
     assert all((mechanism.source, mechanism.reading, mechanism.licence, mechanism.note))
     assert set(mechanism.species_cautions) <= mechanism.burns
     consumed = {species for r in gas.solution.reactions() for species in (r.reactants | r.products)}
@@ -111,3 +115,16 @@ def test_weak_spots_are_said(name, word):
 
 def test_minor_propane_needs_no_caution():
     assert not any("propane" in caution for caution in catalogue.find("natural-gas").cautions)
+
+
+def test_pressure_beyond_the_data_a_mechanism_was_fitted_to_is_noticed():
+    method = choose_mechanism.method_of(catalogue.find("natural-gas").mechanism)
+    assert not method.notices(pressure=8e5)
+    assert len(method.notices("primary zone", pressure=20e5)) == 1
+    assert "GRI-Mech 3.0" in method.source
+
+
+def test_a_mechanism_of_the_users_own_stands_among_the_sources(tmp_path):
+    method = choose_mechanism.method_of(tmp_path / "mine.yaml")
+    assert "mine.yaml" in method.source
+    assert not method.validity
