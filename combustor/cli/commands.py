@@ -40,9 +40,8 @@ def new(arguments: argparse.Namespace) -> Answer:
     path = Path(arguments.file)
     check_free([path], arguments.force)
     catalogue.find(arguments.fuel)
-    write_case(
-        path, starter_text(layout=arguments.layout, fuel=arguments.fuel), force=arguments.force
-    )
+    text = starter_text(layout=arguments.layout, fuel=arguments.fuel)
+    write_case(path, text, force=arguments.force)
     if arguments.json:
         document = {"file": str(path), "layout": arguments.layout, "fuel": arguments.fuel}
         return Answer(f"{dumps(document)}\n")
@@ -52,6 +51,7 @@ def new(arguments: argparse.Namespace) -> Answer:
 def size(arguments: argparse.Namespace) -> Answer:
     """Size the metal of a case."""
     from combustor.case.write import write_case
+    from combustor.hardware.to_case import table_of
     from combustor.report import sizing_tables as report
 
     case = combustor.load_case(arguments.case)
@@ -62,7 +62,7 @@ def size(arguments: argparse.Namespace) -> Answer:
     design = combustor.size(case)
     notes = _write_csv(arguments, report.sizing_data(design, case))
     if arguments.output:
-        write_case(arguments.output, case, hardware=design.hardware, force=arguments.force)
+        write_case(arguments.output, case, table_of(design.hardware), force=arguments.force)
         notes += (f"wrote {arguments.output}",)
     if case.hardware is not None:
         notes += ("the case holds metal already: it was left out and sized anew",)
@@ -100,28 +100,10 @@ def flame(arguments: argparse.Namespace) -> Answer:
     """Look at one flame."""
     from combustor.report import flame_tables as report
 
-    given = quantities.read_all(
-        {
-            "--phi": (quantities.PHI, arguments.phi),
-            "--temperature": (quantities.TEMPERATURE, arguments.temperature),
-            "--pressure": (quantities.PRESSURE, arguments.pressure),
-            "--time": (quantities.RESIDENCE_TIME, arguments.time),
-            "--fuel-temperature": (quantities.FUEL_TEMPERATURE, arguments.fuel_temperature),
-            "--humidity": (quantities.HUMIDITY, arguments.humidity),
-        }
-    )
+    given = quantities.flame_conditions(arguments)
     _check_csv(arguments, report.FLAME_TABLES)
     fuel = combustor.find_fuel(arguments.fuel, arguments.mechanism)
-    humidity = {} if given["--humidity"] is None else {"humidity": given["--humidity"]}
-    result = combustor.flame(
-        fuel,
-        equivalence_ratio=given["--phi"],
-        temperature=given["--temperature"],
-        pressure=given["--pressure"],
-        residence_time=given["--time"],
-        fuel_temperature=given["--fuel-temperature"],
-        **humidity,
-    )
+    result = combustor.flame(fuel, **given)
     notes = _write_csv(arguments, report.flame_data(result))
     text = (
         f"{dumps(report.flame_document(result))}\n"

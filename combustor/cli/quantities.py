@@ -2,31 +2,43 @@
 
 from __future__ import annotations
 
+import argparse
+
 from combustor.base.errors import InputError, Problem
-from combustor.case import kinds
 from combustor.case.quantity import Quantity, QuantityError
+from combustor.case.units import SI_UNIT
+from combustor.studies.flame import ALLOWED
 
-RESIDENCE_TIME = Quantity("residence time", "time", 1e-6, 1e3, '"5 ms"', "1 us to 1000 s")
-PHI = kinds.EQUIVALENCE_RATIO
-TEMPERATURE = kinds.INLET_TEMPERATURE
-PRESSURE = kinds.INLET_PRESSURE
-FUEL_TEMPERATURE = kinds.FUEL_TEMPERATURE
-HUMIDITY = kinds.HUMIDITY
+# what flame() calls it -> option, what it is called, its dimension, how to write it
+_FLAME = {
+    "equivalence_ratio": ("--phi", "equivalence ratio", "ratio", "0.5"),
+    "temperature": ("--temperature", "temperature", "temperature", '"700 K"'),
+    "pressure": ("--pressure", "pressure", "pressure", '"20 bar"'),
+    "residence_time": ("--time", "residence time", "time", '"5 ms"'),
+    "fuel_temperature": ("--fuel-temperature", "fuel temperature", "temperature", '"15 degC"'),
+    "humidity": ("--humidity", "humidity", "ratio", '0.00634 or "6.34 g/kg"'),
+}
 
 
-def read_all(given: dict[str, tuple[Quantity, str | None]]) -> dict[str, float | None]:
-    """Return the SI value of each option that was given, None for those left out.
+def flame_conditions(arguments: argparse.Namespace) -> dict[str, float]:
+    """Return the conditions of a flame in SI, those left out on the command line left out.
 
     Raises
     ------
     InputError
         Every option that cannot be used, at once.
     """
-    values: dict[str, float | None] = {}
+    values: dict[str, float] = {}
     problems = []
-    for option, (quantity, text) in given.items():
+    for condition, (option, name, dimension, example) in _FLAME.items():
+        text = getattr(arguments, option.removeprefix("--").replace("-", "_"))
+        if text is None:
+            continue
+        low, high = ALLOWED[condition]
+        window = f"{low:g} to {high:g} {SI_UNIT[dimension]}".rstrip()
         try:
-            values[option] = None if text is None else quantity.read(_bare(text))
+            quantity = Quantity(name, dimension, low, high, example, window)
+            values[condition] = quantity.read(_bare(text))
         except QuantityError as error:
             problems.append(Problem(error.what, error.allowed, option, text, nearest=error.nearest))
     if problems:

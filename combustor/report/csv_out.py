@@ -4,13 +4,12 @@ from __future__ import annotations
 
 import csv
 import io
-import os
-import tempfile
 from collections.abc import Iterable
 from pathlib import Path
 from typing import Any
 
 from combustor.base.errors import InputError, Problem
+from combustor.case.write import write_text
 from combustor.report.document import Table
 
 
@@ -37,8 +36,6 @@ def write_csv(tables: Iterable[Table], directory: Path, force: bool = False) -> 
     check_free(texts, force)
     try:
         directory.mkdir(parents=True, exist_ok=True)
-        for path, text in texts.items():
-            _replace(path, text)
     except OSError as error:
         raise InputError(
             Problem(
@@ -48,6 +45,8 @@ def write_csv(tables: Iterable[Table], directory: Path, force: bool = False) -> 
                 value=str(directory),
             )
         ) from error
+    for path, text in texts.items():
+        write_text(path, text, force=force)
     return tuple(texts)
 
 
@@ -69,16 +68,3 @@ def _cell(value: Any) -> str:
     if isinstance(value, bool):
         return "true" if value else "false"
     return repr(value) if isinstance(value, float) else str(value)
-
-
-def _replace(path: Path, text: str) -> None:
-    handle, name = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
-    try:
-        with os.fdopen(handle, "w", encoding="utf-8", newline="") as stream:
-            stream.write(text)
-        temporary = Path(name)
-        temporary.chmod(0o644)
-        temporary.replace(path)
-    except BaseException:
-        Path(name).unlink(missing_ok=True)
-        raise

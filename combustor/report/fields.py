@@ -156,13 +156,18 @@ FUEL = (
     Field("wobbe_higher_MJ_m3", "Wobbe\nhigher", "wobbe_higher", "MJ/m3", 1e-6, decimals=3),
     Field("density_15_kg_m3", "density", "density_15", "kg/m3", 1.0, decimals=4),
 )
-FLAME_STIRRED = (
-    Field("temperature_K", "temperature", "", "K", 1.0, decimals=0),
-    Field("nox_ppmvd_15", "NOx", "", "ppmvd, 15 % O2", _PPM, figures=3),
-    Field("co_ppmvd_15", "CO", "", "ppmvd, 15 % O2", _PPM, figures=3),
-    Field("ei_nox_g_kg", "NOx", "", "g/kg fuel", 1e3, figures=3),
-    Field("ei_co_g_kg", "CO", "", "g/kg fuel", 1e3, figures=3),
+FLAME = (
+    Field("fuel", "fuel"),
+    Field("equivalence_ratio", "equivalence ratio", "", "", 1.0, decimals=4),
+    Field("fuel_air_ratio", "fuel-air ratio", "", "kg/kg dry air", 1.0, decimals=5),
+    Field("temperature_K", "temperature", "temperature", "K", 1.0, decimals=1),
+    Field("fuel_temperature_K", "fuel temperature", "fuel_temperature", "K", 1.0, decimals=1),
+    Field("mixture_temperature_K", "unburnt", "mixture_temperature", "K", 1.0, decimals=1),
+    Field("pressure_Pa", "pressure", "pressure", "bar", 1.0, _BAR_PER_PA, decimals=3),
+    Field("humidity_kg_kg", "humidity", "humidity", "kg/kg dry air", 1.0, decimals=5),
+    Field("residence_time_ms", "residence time", "residence_time", "ms", 1e3, figures=4),
 )
+FLAME_TEMPERATURE = Field("temperature_K", "temper-\nature", "temperature", "K", 1.0, decimals=0)
 
 # Kind of a sized dimension: how its value is named, scaled and printed.
 UNIT_KINDS: dict[str, Field] = {
