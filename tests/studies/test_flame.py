@@ -119,3 +119,17 @@ def test_every_bad_argument_is_named_at_once():
         flame(METHANE, GRI, -1.0, float("nan"), 0.0, residence_time=0.0, humidity=2.0)
     named = {problem.key for problem in refused.value.problems}
     assert named == {"equivalence_ratio", "temperature", "pressure", "residence_time", "humidity"}
+
+
+@pytest.mark.parametrize("pressure", [1e5, 20e5])
+@pytest.mark.parametrize("time", [5e-3, 20e-3])
+@pytest.mark.parametrize("phi", [0.36, 0.44])
+def test_two_mechanisms_differ_on_hydrogen_as_the_catalogue_says(pressure, time, phi):
+    newer, older = (catalogue.find("hydrogen", mechanism) for mechanism in (None, "gri30.yaml"))
+    first, second = (
+        flame(fuel, Gas.load(fuel.mechanism), phi, 700.0, pressure, time, humidity=0.0).stirred
+        for fuel in (newer, older)
+    )
+    assert 1640.0 < first.temperature < 1860.0
+    assert 1.2 < first.emissions.nox_dry_15 / second.emissions.nox_dry_15 < 2.7
+    assert any("1.2 to 2.7 times" in caution for caution in newer.cautions)
