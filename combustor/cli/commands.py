@@ -10,7 +10,6 @@ from pathlib import Path
 
 import combustor
 from combustor.base.errors import EXIT_GOOD, EXIT_LIMIT
-from combustor.cli import quantities
 from combustor.report.csv_out import check_free, write_csv
 from combustor.report.document import Block, Table
 from combustor.report.json_out import dumps
@@ -98,9 +97,10 @@ def rate(arguments: argparse.Namespace) -> Answer:
 
 def flame(arguments: argparse.Namespace) -> Answer:
     """Look at one flame."""
+    from combustor.cli.quantities import flame_conditions
     from combustor.report import flame_tables as report
 
-    given = quantities.flame_conditions(arguments)
+    given = flame_conditions(arguments)
     _check_csv(arguments, report.FLAME_TABLES)
     fuel = combustor.find_fuel(arguments.fuel, arguments.mechanism)
     result = combustor.flame(fuel, **given)
