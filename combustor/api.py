@@ -38,7 +38,7 @@ def size(case: Case) -> Design:
         When no metal meets the targets; carries the chain of causes.
     """
     from combustor.fuel.gas import Gas
-    from combustor.sizing import size as size_case
+    from combustor.sizing.size import size as size_case
 
     fuel = fuel_of(case)
     return size_case(case, fuel, Gas.load(fuel.mechanism))
