@@ -68,7 +68,7 @@ def _layout(
             )
     if not has_hardware:
         for key in (*wanted, "casing_length", "inlet_annulus", "exit_annulus"):
-            if not stated(combustor, key):
+            if not stated(combustor, key) and ("combustor", key) not in report.misspelt:
                 yield report.problem(
                     ("combustor", key),
                     "missing",
@@ -109,7 +109,8 @@ def _fuel(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]:
         yield report.problem(
             ("fuel", "composition"), "contradicts fuel.name", "state name or composition, not both"
         )
-    if not has_name and not has_composition:
+    meant = {("fuel", "name"), ("fuel", "composition")} & report.misspelt
+    if not has_name and not has_composition and not meant:
         yield report.problem(
             ("fuel",),
             "no fuel stated",
@@ -169,7 +170,7 @@ def _point(
     path: tuple[str | int, ...], point: Mapping[str, Any], report: Reporter
 ) -> Iterator[Problem]:
     given = [key for key in FUEL_BY if stated(point, key)]
-    if not given:
+    if not given and not any((*path, key) in report.misspelt for key in FUEL_BY):
         yield report.problem(path, "no fuel for this point", f"state one of {', '.join(FUEL_BY)}")
     if len(given) > 1:
         yield report.problem(
@@ -227,7 +228,9 @@ def _targets(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]
             wanted,
             close[0] if close else None,
         )
-    if "hardware" not in document and not stated(targets, "pressure_loss"):
+    loss = ("targets", "pressure_loss")
+    has_loss = stated(targets, "pressure_loss") or loss in report.misspelt
+    if "hardware" not in document and not has_loss:
         yield report.problem(
             ("targets", "pressure_loss"),
             "missing",

@@ -53,6 +53,7 @@ class Reporter:
         self.file = file
         self.text = text
         self.document = document
+        self.misspelt: set[Path] = set()
 
     @cached_property
     def lines(self) -> Mapping[Path, int]:
@@ -82,7 +83,10 @@ class Reporter:
         )
 
     def from_schema(self, error: ValidationError, root: type[BaseModel]) -> Iterator[Problem]:
-        """Yield a problem for every error the schema found."""
+        """Yield a problem for every error the schema found.
+
+        Notes which keys were meant by misspelt ones: those are not missing as well.
+        """
         details = error.errors(include_url=False)
         problems = [
             (detail, self._from_detail(detail, root))
@@ -90,13 +94,13 @@ class Reporter:
             # a list whose rows all failed is not a list that is empty
             if not (detail["type"] == "too_short" and detail["input"])
         ]
-        misspelt = {
+        self.misspelt |= {
             (*detail["loc"][:-1], problem.nearest)
             for detail, problem in problems
-            if detail["type"] == "extra_forbidden"
+            if detail["type"] == "extra_forbidden" and problem.nearest
         }
         for detail, problem in problems:
-            if not (detail["type"] == "missing" and tuple(detail["loc"]) in misspelt):
+            if not (detail["type"] == "missing" and tuple(detail["loc"]) in self.misspelt):
                 yield problem
 
     def _from_detail(self, detail: ErrorDetails, root: type[BaseModel]) -> Problem:
