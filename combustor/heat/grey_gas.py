@@ -17,10 +17,11 @@ GREY_GAS = Method(
     source="Smith, Shen and Friedman, Evaluation of coefficients for the weighted sum of gray "
     "gases model, J. Heat Transfer 104, 1982",
     reading="from memory",
-    validity={"temperature": (600.0, 2400.0), "pressure_path": (0.001, 10.0)},
+    validity={"temperature": (600.0, 2400.0), "pressure_path": (0.001, 10.0), "p_h2o": (0.0, 1.0)},
     scatter="about 5 % against the source's exponential wide-band spectra; 1 atm total pressure",
     note="emissivity interpolated linearly in the water share of H2O + CO2 between the "
-    "tabulated mixtures; pressure path in atm m",
+    "tabulated mixtures; pressure path in atm m; water partial "
+    "pressure in atm counts only where water is more than three quarters of H2O + CO2",
 )
 
 # Each row: absorption coefficient (1/atm/m) and the cubic in T (K) of its weight.

@@ -127,7 +127,7 @@ def _broaden(
     path: FloatArray,
 ) -> FloatArray:
     safe = np.where(path > 0.0, path, peak)
-    spread = np.exp(-c * np.log10(peak / safe) ** 2)
+    spread = np.exp(-c * (np.log10(peak) - np.log10(safe)) ** 2)
     return 1.0 - (a - 1.0) * (1.0 - effective) / (a + b - 1.0 + effective) * spread
 
 

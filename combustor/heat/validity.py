@@ -10,7 +10,7 @@ from combustor.base.method import Method, Notice
 from combustor.heat.convection import FILM_CONVECTION
 from combustor.heat.effusion import EFFUSION, Effusion
 from combustor.heat.film import SLOT_FILM, WEAK_FILM
-from combustor.heat.grey_gas import GREY_GAS, pressure_path
+from combustor.heat.grey_gas import ATMOSPHERE, GREY_GAS, pressure_path
 from combustor.heat.leckner import BROADENING
 from combustor.heat.sides import AnnulusSide, Film, FloatArray, GasSide, Radiation
 from combustor.heat.transport import TRANSPORT
@@ -26,6 +26,7 @@ def gas_notices(
         path = pressure_path(gas.at("pressure", x), x_h2o, x_co2, beam_length)
         found += _worst(GREY_GAS, "temperature", temperature, x)
         found += _worst(GREY_GAS, "pressure_path", path, x)
+        found += _worst(GREY_GAS, "p_h2o", _pure_water_pressure(gas, x), x)
         if radiation.broadening:
             found += _worst(BROADENING, "temperature", temperature, x)
     if gas.viscosity is None or gas.conductivity is None:
@@ -59,6 +60,12 @@ def film_notices(
     for patch in effusion:
         found += EFFUSION.notices(where=patch.name, row_effectiveness=patch.row_effectiveness)
     return tuple(found)
+
+
+def _pure_water_pressure(gas: GasSide, x: FloatArray) -> FloatArray:
+    """Water partial pressure, atm, where the tables for pure water decide; else 0."""
+    x_h2o, x_co2 = gas.at("x_h2o", x), gas.at("x_co2", x)
+    return np.where(x_h2o > 3.0 * x_co2, gas.at("pressure", x) * x_h2o / ATMOSPHERE, 0.0)
 
 
 def _excess(method: Method, quantity: str, value: FloatArray) -> FloatArray:

@@ -78,3 +78,9 @@ class Bench:
 @pytest.fixture
 def bench() -> Bench:
     return Bench()
+
+
+@pytest.fixture(scope="session")
+def new_bench() -> type[Bench]:
+    """Build a fresh bench inside a property test, where fixtures are shared by examples."""
+    return Bench
