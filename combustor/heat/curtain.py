@@ -23,6 +23,8 @@ from combustor.heat.film import (
 )
 from combustor.heat.sides import Film, FloatArray, GasSide
 
+_HAIR = 1e-9  # m
+
 
 @dataclass(frozen=True)
 class Curtain:
@@ -60,8 +62,9 @@ class Curtain:
 
 
 def blowing_ratio(film: Film, gas: GasSide) -> float:
-    """Film mass flux over the gas mass flux at the slot."""
-    flux = gas.at("mass_flow", film.station) / gas.at("area", film.station)
+    """Film mass flux over the gas mass flux just before the slot, its own air left out."""
+    before = film.station - _HAIR
+    flux = gas.at("mass_flow", before) / gas.at("area", before)
     return float(film.density * film.velocity / flux)
 
 

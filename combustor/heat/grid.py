@@ -1,4 +1,4 @@
-"""Stations of the wall march: no cell spans a slot or the end of the recirculation."""
+"""Stations of the wall march: no cell spans a slot or a step in what the wall sees."""
 
 from __future__ import annotations
 
@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from combustor.heat.effusion import Effusion
-from combustor.heat.sides import Film, FloatArray, GasSide
+from combustor.heat.sides import AnnulusSide, Film, FloatArray, GasSide
 
 
 @dataclass(frozen=True)
@@ -23,19 +23,24 @@ class Grid:
 
 
 def grid_of(
-    gas: GasSide, films: Sequence[Film], effusion: Sequence[Effusion], stations: int
+    gas: GasSide,
+    films: Sequence[Film],
+    air: AnnulusSide,
+    effusion: Sequence[Effusion],
+    stations: int,
 ) -> Grid:
     """Spread at least ``stations`` stations over the gas side, evenly between the breaks.
 
-    Every stretch between breaks (slots, ends of drilled patches, end of recirculation)
-    carries stations at both its ends; the last one stands a hair before the break, where
-    the wall is hottest.
+    Every stretch between breaks (slots, ends of drilled patches, end of recirculation, rows
+    where gas or air is given twice) carries stations at both its ends; the last one stands a
+    hair before the break, where the wall is hottest.
     """
     start, end = float(gas.station[0]), float(gas.station[-1])
     total = end - start
     breaks = {start, end}
     breaks.update(film.station for film in films if start < film.station < end)
     breaks.update(x for patch in effusion for x in (patch.start, patch.end) if start < x < end)
+    breaks.update(x for side in (gas, air) for x in _steps(side.station) if start < x < end)
     recirculation_end = gas.recirculation_end
     if recirculation_end is not None and start < recirculation_end < end:
         breaks.add(recirculation_end)
@@ -54,6 +59,11 @@ def grid_of(
     x = np.concatenate(nodes)
     limit = -np.inf if recirculation_end is None else recirculation_end
     return Grid(x, np.concatenate(lengths), x < limit)
+
+
+def _steps(station: FloatArray) -> list[float]:
+    """Return the stations that are given twice: values step there."""
+    return [float(x) for x in station[1:][np.diff(station) == 0.0]]
 
 
 def _spaced(edges: list[float], gap: float) -> list[float]:

@@ -22,7 +22,8 @@ class GasSide:
     Parameters
     ----------
     station : array
-        Axial positions, m, not falling; the march spans the first to the last.
+        Axial positions, m, not falling; the march spans the first to the last. One given
+        twice marks a step there.
     temperature : array
         Bulk gas temperature, K.
     mass_flow, area : array
@@ -66,7 +67,7 @@ class AnnulusSide:
     Parameters
     ----------
     station : array
-        Axial positions, m, not falling.
+        Axial positions, m, not falling; one given twice marks a step there.
     mass_flow, area : array
         kg/s and m2, on one basis. The sign of the flow (reverse-flow machines) is ignored.
     temperature : array

@@ -163,7 +163,7 @@ def march(
     """
     _refuse_impossible(wall, gas, films, air, stations)
     films = sorted(films, key=lambda film: film.station)
-    grid = grid_of(gas, films, effusion, stations)
+    grid = grid_of(gas, films, air, effusion, stations)
     x = grid.station
     gas_temperature, air_temperature = gas.at("temperature", x), air.at("temperature", x)
     emissivity = gas_emissivity(gas, x, wall.beam_length, radiation)

@@ -11,6 +11,7 @@ from hypothesis import strategies as st
 
 from combustor.base.errors import InputError
 from combustor.heat.conduction import coating_resistance, sheet_resistance
+from combustor.heat.curtain import blowing_ratio
 from combustor.heat.methods import METHODS
 from combustor.heat.sides import Casing, Film, Radiation
 
@@ -206,6 +207,33 @@ def test_peak_is_found_just_before_a_slot(bench):
     assert result.station[before] == pytest.approx(0.05)
     assert result.temperature[before + 1] < result.temperature[before]
     assert np.all(np.diff(result.station) > 0.0)
+
+
+def test_a_step_in_annulus_flow_is_a_step_in_the_wall(bench):
+    """Values given twice at one station: either side equals the uniform wall, at any grid."""
+    fast = bench.march()
+    bench.change("air", mass_flow=np.full(2, 100.0))
+    slow = bench.march()
+    four = {"temperature": np.full(4, 750.0), "area": np.ones(4)}
+    four |= {"hydraulic_diameter": np.full(4, 0.01565), "viscosity": np.full(4, 3.56e-5)}
+    bench.change("air", conductivity=np.full(4, 0.0548), **four)
+    bench.change("air", station=np.array([0.0, 0.043, 0.043, 0.1]))
+    bench.change("air", mass_flow=np.array([370.0, 370.0, 100.0, 100.0]))
+    for stations in (7, 60):
+        result = bench.march(stations=stations)
+        before = result.station < 0.043
+        assert result.temperature[before] == pytest.approx(fast.temperature[0], abs=0.01)
+        assert result.temperature[~before] == pytest.approx(slow.temperature[0], abs=0.01)
+        total = 0.43 * fast.total(fast.heat_from_gas) + 0.57 * slow.total(slow.heat_from_gas)
+        assert result.total(result.heat_from_gas) == pytest.approx(total, rel=1e-6)
+
+
+def test_blowing_ratio_is_on_the_gas_before_the_slot_feeds_it(bench):
+    four = np.ones(4)
+    bench.change("gas", station=np.array([0.0, 0.02, 0.02, 0.1]), temperature=2000.0 * four)
+    bench.change("gas", mass_flow=np.array([100.0, 100.0, 209.0, 209.0]), area=four)
+    assert blowing_ratio(bench.film(1.0, 0.02), bench.gas) == pytest.approx(2.09)
+    assert blowing_ratio(bench.film(1.0, 0.05), bench.gas) == pytest.approx(1.0)
 
 
 def test_films_off_the_wall(bench):
