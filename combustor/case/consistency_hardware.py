@@ -280,12 +280,12 @@ def _underivable(combustor: Row, hardware: Row, report: Reporter) -> Iterator[Pr
         yield report.problem(
             (*path, "diffuser", "inlet_area"), "missing", "or state combustor.inlet_annulus"
         )
-    if stated(table(hardware, "liner") or {}, "area"):
+    if _by_area(table(hardware, "liner") or {}):
         yield from _unstated(path, hardware, ("liner_height",), report)
         for index, wall in tables(hardware, "walls"):
             yield from _unstated((*path, "walls", index), wall, ("perimeter",), report)
     annuli = tables(hardware, "annuli")
-    if any(stated(annulus, "area") for _, annulus in annuli):
+    if any(_by_area(annulus) for _, annulus in annuli):
         has_ring = combustor.get("layout") == "can-annular" and all(
             stated(combustor, key) for key in ("casing_outer_diameter", "casing_inner_diameter")
         )
@@ -294,6 +294,11 @@ def _underivable(combustor: Row, hardware: Row, report: Reporter) -> Iterator[Pr
             yield from _unstated(path, hardware, wanted, report)
         for index, wall in tables(hardware, "walls"):
             yield from _unstated((*path, "walls", index), wall, ("casing_area_ratio",), report)
+
+
+def _by_area(passage: Row) -> bool:
+    diameters = ("diameter", "outer_diameter", "inner_diameter")
+    return stated(passage, "area") and not any(stated(passage, key) for key in diameters)
 
 
 def _unstated(path: Path, node: Row, keys: tuple[str, ...], report: Reporter) -> Iterator[Problem]:
