@@ -2,20 +2,19 @@
 
 from __future__ import annotations
 
-import difflib
 import itertools
 from collections.abc import Iterator, Mapping
 from typing import Any
 
 from combustor.base.errors import Problem
 from combustor.case import kinds as k
+from combustor.case.consistency_openings import injector_problems, opening_problems
 from combustor.case.problems import Reporter
-from combustor.case.reading import named, number, stated, table, tables
+from combustor.case.reading import as_list, number, stated, table, tables
 
 Row = Mapping[str, Any]
 Path = tuple[str | int, ...]
 
-SHARE_TOLERANCE = 1e-6
 PASSAGE_FORMS = (
     ("diameter",),
     ("outer_diameter", "inner_diameter"),
@@ -31,8 +30,8 @@ def hardware_problems(document: Row, report: Reporter) -> Iterator[Problem]:
     yield from _passages(hardware, report)
     yield from _sides(document, hardware, report)
     yield from _zones(hardware, report)
-    yield from _openings(hardware, report)
-    yield from _injectors(hardware, report)
+    yield from opening_problems(hardware, report)
+    yield from injector_problems(hardware, report)
     yield from _underivable(table(document, "combustor") or {}, hardware, report)
 
 
@@ -64,7 +63,7 @@ def _passage(path: Path, passage: Row, report: Reporter) -> Iterator[Problem]:
 
 def _rings(path: Path, passage: Row, report: Reporter) -> Iterator[Problem]:
     for large, small in zip(
-        _as_list(passage["outer_diameter"]), _as_list(passage["inner_diameter"]), strict=False
+        as_list(passage["outer_diameter"]), as_list(passage["inner_diameter"]), strict=False
     ):
         ring = {"outer": large, "inner": small}
         outer = number(ring, "outer", k.DIAMETER)
@@ -76,13 +75,13 @@ def _rings(path: Path, passage: Row, report: Reporter) -> Iterator[Problem]:
 
 
 def _stations(path: Path, node: Row, keys: tuple[str, ...], report: Reporter) -> Iterator[Problem]:
-    stations = _as_list(node.get("station"))
+    stations = as_list(node.get("station"))
     values = [number({"x": x}, "x", k.STATION) for x in stations]
     known = [x for x in values if x is not None]
     if any(b <= a for a, b in itertools.pairwise(known)):
         yield report.problem((*path, "station"), "stations do not rise", "each above the last")
     for key in keys:
-        count = len(_as_list(node.get(key)))
+        count = len(as_list(node.get(key)))
         wanted = len(stations) if stated(node, "station") else 1
         if stated(node, key) and count != wanted:
             yield report.problem(
@@ -92,12 +91,6 @@ def _stations(path: Path, node: Row, keys: tuple[str, ...], report: Reporter) ->
                 if stated(node, "station")
                 else "add station = [ ... ], or give one value",
             )
-
-
-def _as_list(value: object) -> list[Any]:
-    if value is None:
-        return []
-    return list(value) if isinstance(value, list | tuple) else [value]
 
 
 def _sides(document: Row, hardware: Row, report: Reporter) -> Iterator[Problem]:
@@ -143,130 +136,6 @@ def _zones(hardware: Row, report: Reporter) -> Iterator[Problem]:
             "not before the end of the liner",
             "below liner_length",
             zones["secondary_end"],
-        )
-
-
-def _openings(hardware: Row, report: Reporter) -> Iterator[Problem]:
-    seen: dict[str, int] = {}
-    length = number(hardware, "liner_length", k.LENGTH)
-    for index, row in tables(hardware, "openings"):
-        path: Path = ("hardware", "openings", index)
-        name = row.get("name")
-        if isinstance(name, str):
-            if name.strip() in seen:
-                yield report.problem(
-                    (*path, "name"), "the same name twice", "every opening needs its own", name
-                )
-            seen.setdefault(name.strip(), index)
-        yield from _size(path, row, report)
-        yield from _parts(path, row, report)
-        x = number(row, "x", k.STATION)
-        if x is not None and length is not None and not 0.0 <= x <= length:
-            yield report.problem(
-                (*path, "x"), "not on the liner", "between 0 and liner_length", row["x"]
-            )
-
-
-def _size(path: Path, row: Row, report: Reporter) -> Iterator[Problem]:
-    sizes = [key for key in ("diameter", "area") if stated(row, key)]
-    if len(sizes) == 2:
-        yield report.problem(
-            (*path, "area"),
-            "contradicts diameter",
-            "the area of a round hole follows from it: state one of the two",
-        )
-    if stated(row, "diameter") and stated(row, "swirler"):
-        yield report.problem(
-            (*path, "diameter"), "contradicts swirler", "its size follows from tip and hub diameter"
-        )
-    if not sizes and not stated(row, "swirler") and not stated(row, "effective_area"):
-        yield report.problem(
-            path, "an opening without size", "state diameter, area, swirler or effective_area"
-        )
-    if stated(row, "effective_area") and stated(row, "discharge_coefficient"):
-        yield report.problem(
-            (*path, "discharge_coefficient"),
-            "contradicts effective_area",
-            "a measured effective area holds the coefficient already: state one of the two",
-        )
-    if stated(row, "effective_area") and not sizes and row.get("count") == 0:
-        yield report.problem(
-            (*path, "count"), "no holes, but an effective area", "leave one out", 0
-        )
-
-
-def _parts(path: Path, row: Row, report: Reporter) -> Iterator[Problem]:
-    role = row.get("role")
-    swirler = table(row, "swirler")
-    if swirler is not None:
-        if isinstance(role, str) and role not in ("swirler", "premixer"):
-            yield report.problem(
-                (*path, "swirler"), f"a vane pack on a {role} opening", "swirler or premixer only"
-            )
-        hub = number(swirler, "hub_diameter", k.HUB_DIAMETER)
-        tip = number(swirler, "tip_diameter", k.DIAMETER)
-        if hub is not None and tip is not None and hub >= tip:
-            yield report.problem(
-                (*path, "swirler", "hub_diameter"),
-                "not smaller than tip_diameter",
-                "",
-                swirler["hub_diameter"],
-            )
-        else:
-            yield from _vanes(path, swirler, report)
-    if stated(row, "slot") and isinstance(role, str) and role != "film":
-        yield report.problem((*path, "slot"), f"a film lip on a {role} opening", "film only")
-    if row.get("edge") == "swirler" and swirler is None:
-        yield report.problem(
-            (*path, "edge"), "a swirler without vanes", "add swirler = { ... }", "swirler"
-        )
-
-
-def _vanes(path: Path, swirler: Row, report: Reporter) -> Iterator[Problem]:
-    hub = number(swirler, "hub_diameter", k.HUB_DIAMETER)
-    tip = number(swirler, "tip_diameter", k.DIAMETER)
-    thickness = number(swirler, "vane_thickness", k.THICKNESS)
-    count = swirler.get("vane_count")
-    if hub is None or tip is None or thickness is None or not isinstance(count, int):
-        return
-    # the ring less the vanes: pi/4 (D^2 - d^2) - n t (D - d) / 2
-    if 3.141592653589793 / 2.0 * (tip + hub) <= count * thickness:
-        yield report.problem(
-            (*path, "swirler", "vane_count"),
-            "the vanes fill the ring",
-            "fewer or thinner vanes",
-            count,
-        )
-
-
-def _injectors(hardware: Row, report: Reporter) -> Iterator[Problem]:
-    openings = [row["name"].strip() for _, row in named(hardware, "openings")]
-    total, seen, readable = 0.0, set(), True
-    rows = tables(hardware, "injectors")
-    for index, row in rows:
-        path: Path = ("hardware", "injectors", index)
-        share = number(row, "share", k.SHARE) if stated(row, "share") else 1.0
-        readable = readable and share is not None
-        total += share or 0.0
-        name = row.get("name")
-        if isinstance(name, str) and name.strip() in seen:
-            yield report.problem(
-                (*path, "name"), "the same name twice", "every injector needs its own", name
-            )
-        seen.add(name.strip() if isinstance(name, str) else index)
-        for place, opening in enumerate(_as_list(row.get("openings"))):
-            if isinstance(opening, str) and opening.strip() not in openings:
-                close = difflib.get_close_matches(opening, openings, n=1)
-                yield report.problem(
-                    (*path, "openings", place),
-                    "no such opening",
-                    "name a row of hardware.openings",
-                    opening,
-                    close[0] if close else None,
-                )
-    if rows and readable and abs(total - 1.0) > SHARE_TOLERANCE:
-        yield report.problem(
-            ("hardware", "injectors"), f"the shares sum to {100 * total:.8g} %", "100 % is needed"
         )
 
 

@@ -40,3 +40,10 @@ def number(node: Mapping[str, Any], key: str, kind: Quantity) -> float | None:
         return kind.read(node[key])
     except QuantityError:
         return None
+
+
+def as_list(value: object) -> list[Any]:
+    """Return a list; a single value is a list of one, None an empty one."""
+    if value is None:
+        return []
+    return list(value) if isinstance(value, list | tuple) else [value]
