@@ -29,8 +29,9 @@ def key_text(path: Path, document: Mapping[str, Any] | None = None) -> str:
 
 
 def _shown(part: str) -> str:
+    part = part[:_LONGEST_VALUE]
     bare = part.replace("_", "").replace("-", "")
-    return part if bare.isalnum() and bare.isascii() else repr(part[:_LONGEST_VALUE])
+    return part if bare.isalnum() and bare.isascii() else repr(part)
 
 
 def _row_name(path: Path, document: Mapping[str, Any] | None) -> str | None:
@@ -119,7 +120,8 @@ class Reporter:
         if kind == "literal_error":
             allowed = list(typing.get_args(_annotation(root, path)) or [])
             words = _words(context.get("expected", ""), allowed)
-            close = difflib.get_close_matches(str(value), words, n=1) if words else []
+            given = value if isinstance(value, str) else ""
+            close = difflib.get_close_matches(given, words, n=1)
             nearest = close[0] if close else None
             return self.problem(path, "not one of the choices", ", ".join(words), value, nearest)
         return self.problem(path, *_plain(kind, path, value, context))
@@ -178,7 +180,8 @@ def _short(value: object) -> object | None:
     if isinstance(value, str) and len(value) > _LONGEST_VALUE:
         return value[: _LONGEST_VALUE - 3] + "..."
     if isinstance(value, bool | int | float | str):
-        return value if not isinstance(value, int) or abs(value) < 10**20 else float("inf")
+        huge = isinstance(value, int) and abs(value) >= 10**20
+        return "a number too large to show" if huge else value
     return str(value)[:_LONGEST_VALUE]
 
 

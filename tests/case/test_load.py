@@ -279,6 +279,20 @@ def test_fuel_split_sums_and_names_injectors() -> None:
     assert (problem.what, problem.nearest) == ("no such injector", "main")
 
 
+HUGE = "0x" + "f" * 5000
+
+
+@pytest.mark.parametrize("old", ['"can"', '"full"', '"rated"', '"14.2 kg/s"', '"test rig"'])
+def test_integers_of_any_length_are_refused(old: str) -> None:
+    for problem in problems(GOOD.replace(f"= {old}", f"= {HUGE}", 1)):
+        assert len(str(problem)) < 400
+
+
+def test_a_key_of_any_length_is_refused_briefly() -> None:
+    (problem,) = problems(GOOD + f"{'k' * 100_000} = 1\n")
+    assert len(str(problem)) < 400
+
+
 @pytest.mark.parametrize(
     "text",
     [
