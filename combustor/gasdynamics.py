@@ -34,7 +34,7 @@ SUTHERLAND_VISCOSITY = Method(
     source="Sutherland 1893; constants 1.716e-5 Pa s at 273.15 K and 110.4 K",
     reading="from memory",
     validity={"temperature": (170.0, 1900.0)},
-    scatter="2 %",
+    scatter="2 % to 800 K, 3 % to 1000 K against handbook tables",
 )
 SUTHERLAND_CONDUCTIVITY = Method(
     key="conductivity-sutherland",

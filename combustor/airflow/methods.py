@@ -45,7 +45,7 @@ def methods_used(hardware: Hardware) -> tuple[Method, ...]:
         if opening.count > 0:
             used += _of_opening(opening, hardware)
     used += [liner.LINER_MOMENTUM, exit.HOT_LOSS]
-    return tuple(dict((method.key, method) for method in used).values())
+    return tuple({method.key: method for method in used}.values())
 
 
 def _of_opening(opening: Opening, hardware: Hardware) -> list[Method]:

@@ -144,19 +144,20 @@ def _advance(
 
 def solve_from_low_flow(machine: Machine) -> tuple[Array, Fields, Convergence]:
     """Return the solution followed from a tenth of the flow, for machines that start badly."""
-    state = first_guess(machine)
-    fields = resting_fields(machine, state[machine.laws.count] * machine.inlet.pressure)
-    convergence = _stuck(math.inf, 0)
-    for share in (0.1, 0.3, 0.5, 0.7, 0.85, 0.95, 1.0):
-        inlet = replace(machine.inlet, mass_flow=share * machine.inlet.mass_flow)
-        loss = (1.0 - machine.dump_pressure / inlet.pressure) * share**2
-        part = replace(machine, inlet=inlet, dump_pressure=inlet.pressure * (1.0 - loss))
-        if share == 1.0:
-            part = machine
-        state[machine.laws.count] = min(
-            state[machine.laws.count], (1.0 - 1e-6) * part.dump_pressure / inlet.pressure
-        )
-        state, fields, convergence = solve(part, state, fields)
+    part = at_flow(machine, 0.1)
+    state = first_guess(part)
+    fields = resting_fields(part, state[part.laws.count] * part.inlet.pressure)
+    state, fields, convergence = solve(part, state, fields)
+    for share in (0.3, 0.5, 0.7, 0.85, 0.95, 1.0):
         if not convergence.converged:
-            return state, fields, convergence
+            break
+        part = at_flow(machine, share) if share < 1.0 else machine
+        state, fields, convergence = solve(part, state, fields)
     return state, fields, convergence
+
+
+def at_flow(machine: Machine, share: float) -> Machine:
+    """Return the machine with ``share`` of its air; the diffuser's loss goes with its square."""
+    inlet = replace(machine.inlet, mass_flow=share * machine.inlet.mass_flow)
+    loss = (inlet.pressure - machine.dump_pressure) * share**2
+    return replace(machine, inlet=inlet, dump_pressure=inlet.pressure - loss)

@@ -84,11 +84,15 @@ def split(
         The machine is choked, or the air has no way in.
     """
     machine = build(hardware, inlet, liner_gas, annulus_heat, cells)
-    _refuse_choked(machine)
-    state, fields = _start(machine, guess)
-    state, fields, convergence = solve(machine, state, fields)
+    _refuse_choked(machine, float(machine.laws.area_at_rest.sum()))
+    state, fields, convergence = solve(machine, *_start(machine, guess))
+    if not convergence.converged and guess is not None:
+        state, fields, convergence = solve(machine, *_start(machine, None))
     if not convergence.converged:
         state, fields, convergence = solve_from_low_flow(machine)
+    if not convergence.converged and fields.openings is not None:
+        # With the annulus in motion the holes pass less than at rest.
+        _refuse_choked(machine, float(np.sum(fields.openings.effective_area)))
     return collect(hardware, machine, state, fields, convergence)
 
 
@@ -150,9 +154,8 @@ def split_for_loss(
     raise NotConvergedError(f"no flow was found that gives a pressure loss of {pressure_loss:.4g}")
 
 
-def _refuse_choked(machine: Machine) -> None:
+def _refuse_choked(machine: Machine, area: float) -> None:
     inlet = machine.inlet
-    area = float(machine.laws.area_at_rest.sum())
     most = area * orifice_flux(
         machine.dump_pressure,
         inlet.temperature,
@@ -174,28 +177,36 @@ def _refuse_choked(machine: Machine) -> None:
 
 def _start(machine: Machine, guess: AirSplit | None) -> tuple[Array, Fields]:
     """Return state and fields to start from."""
+    if guess is None or len(guess.openings) <= max(machine.laws.index):
+        state = first_guess(machine)
+        return state, resting_fields(machine, state[machine.laws.count] * machine.inlet.pressure)
     count = machine.laws.count
-    if guess is not None:
-        flows = [flow.mass_flow for flow in guess.openings]
-        if len(flows) > max(machine.laws.index) and sum(flows) > 0.0:
-            taken = np.array([flows[index] for index in machine.laws.index])
-            state = np.zeros(machine.unknowns)
-            state[:count] = taken / taken.sum() if taken.sum() > 0.0 else 1.0 / count
-            inlet_pressure = guess.exit_pressure / (1.0 - guess.pressure_loss)
-            level = machine.inlet.pressure / inlet_pressure
-            pressure = guess.liner.static_pressure
-            state[count] = min(
-                float(pressure[0]) * level / machine.inlet.pressure,
-                0.999 * machine.dump_pressure / machine.inlet.pressure,
-            )
-            if machine.shares_dome:
-                state[-1] = _dome_share(machine, guess)
-            fields = resting_fields(machine, state[count] * machine.inlet.pressure)
-            if pressure.size == machine.liner.station.size:
-                fields.liner.static_pressure = pressure * level
-            return state, fields
-    state = first_guess(machine)
-    return state, resting_fields(machine, state[count] * machine.inlet.pressure)
+    taken = np.array([guess.openings[index].mass_flow for index in machine.laws.index])
+    state = np.zeros(machine.unknowns)
+    state[:count] = taken / taken.sum() if taken.sum() > 0.0 else 1.0 / count
+    # Losses go with the square of the corrected flow.
+    inlet_pressure = guess.exit_pressure / (1.0 - guess.pressure_loss)
+    guess_loss = 1.0 - guess.dump_pressure / inlet_pressure
+    own_loss = 1.0 - machine.dump_pressure / machine.inlet.pressure
+    growth = own_loss / guess_loss if guess_loss > 0.0 else 1.0
+
+    def grown(static_pressure: Array) -> Array:
+        fall = growth * (1.0 - static_pressure / inlet_pressure)
+        return machine.inlet.pressure * (1.0 - np.clip(fall, own_loss + 1e-6, 0.5))
+
+    pressure = grown(guess.liner.static_pressure)
+    state[count] = pressure[0] / machine.inlet.pressure
+    if machine.shares_dome:
+        state[-1] = _dome_share(machine, guess)
+    fields = resting_fields(machine, float(pressure[0]))
+    if pressure.size == machine.liner.station.size:
+        fields.liner.static_pressure = pressure
+    if len(guess.annuli) == len(fields.annuli):
+        for field, side in zip(fields.annuli, guess.annuli, strict=True):
+            if side.station.size == field.static_pressure.size:
+                along = grown(side.static_pressure)
+                field.static_pressure = along[::-1] if machine.reverse else along
+    return state, fields
 
 
 def _dome_share(machine: Machine, guess: AirSplit) -> float:

@@ -86,19 +86,19 @@ def can(
 
     def film(name: str, station: float) -> Opening:
         return row(
-            name, "film", station, 100, 0.0032, edge="metering", feed="static",
+            name, "film", station, 100, 0.0031, edge="metering", feed="static",
             slot=Slot(0.003, 0.0012, length_of_slot),
         )  # fmt: skip
 
     default = (
-        swirler("swirler", 1, 0.140, 0.070),
-        row("heat shield", "dome", 0.0, 120, 0.0035, side="dome", edge="orifice"),
+        swirler("swirler", 1, 0.125, 0.060),
+        row("heat shield", "dome", 0.0, 120, 0.0030, side="dome", edge="orifice"),
         film("slot 1", 0.04),
-        row("primaries", "primary", 0.16, 8, 0.0315),
+        row("primaries", "primary", 0.16, 8, 0.0280),
         film("slot 2", 0.24),
-        row("secondaries", "secondary", 0.34, 8, 0.0285, edge="plunged"),
+        row("secondaries", "secondary", 0.34, 8, 0.0250, edge="plunged"),
         film("slot 3", 0.44),
-        row("dilution", "dilution", 0.56, 8, 0.052),
+        row("dilution", "dilution", 0.56, 8, 0.0490),
         film("slot 4", 0.68),
         row("seals", "leak", 0.90, 1, 0.019, edge="orifice", feed="static"),
     )
