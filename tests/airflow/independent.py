@@ -1,10 +1,11 @@
 """A second solution of the air split: every unknown at once by a general root finder.
 
 Written from the equations alone. It reads the metal's plain numbers and calls nothing of the
-package. Straight flow, swirlers and static- or total-fed rows, plain and plunged holes.
+package. Both flow directions, swirlers, static- or total-fed rows, plain and plunged holes.
 
 Unknowns: flow of each row; total pressure and Mach number of each annulus node; static pressure
-and velocity of each liner node; static pressure at the dome face.
+and velocity of each liner node; static pressure at the dome face; the outer annulus's share of the
+dome air where two annuli feed it.
 """
 
 import math
@@ -41,6 +42,9 @@ def solve(hardware, inlet, gas=None):
     cp = g * R / (g - 1)
     rows = hardware.openings
     n = len(rows)
+    reverse = hardware.flow == "reverse"
+    at_dome = np.array([row.side == "dome" for row in rows])
+    shared = reverse and len(hardware.annuli) == 2
 
     # compressor exit head by its own iteration on the static pressure
     p = P3
@@ -57,6 +61,9 @@ def solve(hardware, inlet, gas=None):
         kinks = [k for k in passage.area.station if 0 < k < end]
         x, pairs = twice_at({rows[i].station for i in own}, kinks, end)
         before = {i: pairs[rows[i].station] for i in own}
+        if reverse:
+            x = x[::-1]
+            before = {i: x.size - 2 - k for i, k in before.items()}
         sides.append(
             {
                 "own": own,
@@ -91,7 +98,7 @@ def solve(hardware, inlet, gas=None):
     static = np.array([row.feed == "static" for row in rows])
     fixed = np.array([given_area(row, a, A[0]) for row, a in zip(rows, area, strict=True)])
 
-    sizes = [n] + [2 * side["x"].size for side in sides] + [2 * x.size + 1]
+    sizes = [n] + [2 * side["x"].size for side in sides] + [2 * x.size + 1, int(shared)]
     cuts = np.cumsum(sizes)[:-1]
 
     def equations(u):
@@ -99,9 +106,13 @@ def solve(hardware, inlet, gas=None):
         W = parts[0] * W3
         out = []
         P_row, p_row, W_up = np.full(n, P_dump), np.full(n, P_dump), np.full(n, np.inf)
-        for side, values in zip(sides, parts[1:-1], strict=True):
+        share = parts[-1][0] if shared else 1.0
+        fed = []
+        for number, (side, values) in enumerate(zip(sides, parts[1:-2], strict=True)):
             P, M = values[: side["x"].size] * P3, values[side["x"].size :]
             W_an = side["draw"] @ W[side["own"]]
+            if reverse:
+                W_an = W_an + W[at_dome].sum() * (share if number == 0 else 1 - share)
             bracket = 1 + 0.5 * (g - 1) * M**2
             p = P * bracket ** (-g / (g - 1))
             passed = side["A"] * P * math.sqrt(g / (R * T3)) * M
@@ -111,12 +122,17 @@ def solve(hardware, inlet, gas=None):
             Re = np.maximum(W_an / side["A"] * side["D"] / mu, 100.0)
             f = (1.8 * np.log10(6.9 / Re + (hardware.roughness / side["D"] / 3.7) ** 1.11)) ** -2
             slope = f / side["D"] * q
-            drop = 0.5 * np.diff(side["x"]) * (slope[1:] + slope[:-1])
+            drop = 0.5 * np.abs(np.diff(side["x"])) * (slope[1:] + slope[:-1])
             out.append(np.concatenate([[P[0] - P_dump], np.diff(P) + drop]) / P3 * 100)
             at = [side["before"][i] for i in side["own"]]
             P_row[side["own"]], p_row[side["own"]] = P[at], p[at]
             W_up[side["own"]] = W_an[at]
-        p_L, U, head = parts[-1][: x.size] * P3, parts[-1][x.size : -1] * 100, parts[-1][-1] * P3
+            fed.append(P[-1] - 0.2 * (P[-1] - p[-1]))
+        if reverse:
+            P_row[at_dome] = p_row[at_dome] = fed[0]
+        if shared:
+            out.append([(fed[0] - fed[1]) / P3 * 100])
+        p_L, U, head = parts[-2][: x.size] * P3, parts[-2][x.size : -1] * 100, parts[-2][-1] * P3
         p_out = p_L[before]
         q_up = np.maximum(P_row - p_row, 1e-12 * P_row)
         K = (P_row - p_out) / q_up
@@ -161,13 +177,13 @@ def solve(hardware, inlet, gas=None):
         [np.full(n, 1 / n)]
         + [np.concatenate([np.full(s["x"].size, P_dump / P3), np.full(s["x"].size, 0.05)])
            for s in sides]
-        + [np.full(x.size, 0.955), np.full(x.size, 0.3), [0.955]]
+        + [np.full(x.size, 0.955), np.full(x.size, 0.3), [0.955], np.full(int(shared), 0.5)]
     )  # fmt: skip
     found = root(equations, start, method="hybr", tol=1e-13, options={"maxfev": 200000})
     if np.max(np.abs(equations(found.x))) > 1e-9:
         found = root(equations, found.x, method="lm", tol=1e-14)
     values = np.split(found.x, cuts)
-    p_end, U_end = values[-1][x.size - 1] * P3, values[-1][2 * x.size - 1] * 100
+    p_end, U_end = values[-2][x.size - 1] * P3, values[-2][2 * x.size - 1] * 100
     T_static = T_gas[-1] - U_end**2 / (2 * cp_gas[-1])
     P_exit = p_end * (T_gas[-1] / T_static) ** (g_gas[-1] / (g_gas[-1] - 1))
     return (

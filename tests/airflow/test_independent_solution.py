@@ -7,6 +7,8 @@ from combustor.airflow.split import split
 CASES = {
     "can-cold": (metal.can, metal.can_inlet, None),
     "can-fired": (metal.can, metal.can_inlet, 0.245),
+    "can-reverse-fired": (lambda: metal.can("reverse"), metal.can_inlet, 0.245),
+    "annular-reverse-fired": (lambda: metal.annular("reverse"), metal.annular_inlet, 0.50),
     "annular-cold": (metal.annular, metal.annular_inlet, None),
     "annular-fired": (metal.annular, metal.annular_inlet, 0.50),
 }

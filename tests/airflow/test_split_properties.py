@@ -5,10 +5,11 @@ from dataclasses import replace
 
 import metal_samples as metal
 import pytest
-from hypothesis import given, settings
+from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 
 from combustor.airflow.split import split
+from combustor.hardware.metal import AxialProfile
 
 machines = st.fixed_dictionaries(
     {
@@ -62,6 +63,32 @@ def test_enlarging_a_row_gives_it_more_air_and_lowers_the_loss(values, number):
         assert after.dome_pressure - after.liner.static_pressure[0] < (
             before.dome_pressure - before.liner.static_pressure[0]
         )
+
+
+def wide(hardware, factor):
+    annuli = tuple(
+        replace(p, area=AxialProfile(p.area.station, tuple(a * factor for a in p.area.value)))
+        for p in hardware.annuli
+    )
+    return replace(hardware, annuli=annuli)
+
+
+@given(machines, st.floats(1.6, 3.0))
+@settings(max_examples=40, derandomize=True, deadline=None)
+def test_ten_percent_more_dilution_area_takes_its_share_from_the_dome(values, width):
+    # Annuli wide enough that every hole has ten annulus heads: the rows compete by area alone.
+    hardware, inlet, gas = build(values)
+    hardware = wide(hardware, width)
+    rows = tuple(
+        replace(o, area=1.1 * o.area, diameter=None) if o.role == "dilution" else o
+        for o in hardware.openings
+    )
+    before, after = split(hardware, inlet, gas), split(replace(hardware, openings=rows), inlet, gas)
+    assume(min(opening.head_ratio for opening in before.openings) >= 10.0)
+    dome = [sum(o.mass_flow for o in r.openings if o.side == "dome") for r in (before, after)]
+    share = before.flow("dilution") / inlet.mass_flow
+    assert 0.08 <= (1 - dome[1] / dome[0]) / share <= 0.10
+    assert after.pressure_loss < before.pressure_loss
 
 
 @given(machines)
