@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass, replace
+from functools import partial
 from typing import Literal
 
 import numpy as np
@@ -18,9 +20,36 @@ Status = Literal["burning", "blown_out", "not_converged"]
 BURNING_SHARE = 0.35  # of the rise from inlet to equilibrium temperature
 NEGLIGIBLE_HEAT = 150.0  # K of temperature rise still to come: burnt, without asking equilibrium
 NEGLIGIBLE_RISE = 50.0  # K from inlet to equilibrium: nothing to ignite
-LONG_RESIDENCE = 1000.0  # times the wanted residence time, where the burning branch is entered
-FIRST_RATIO = 0.1  # of residence time from one step along the branch to the next
-LAST_RATIO = 0.97  # a step this small that still loses the branch is the end of it
+# The branch is entered at this many times the wanted residence time. Equilibrium falls off the
+# burning branch at two to three times the residence time of true extinction, so this is ample.
+LONG_RESIDENCE = 20.0
+FIRST_RATIO = 0.2  # of residence time from one step along the branch to the next
+LAST_RATIO = 0.9  # a step this small that loses the branch is marched in time instead
+GENTLE_FALL = 100.0  # K in one step: a stream that cools by less has not gone out
+STEP_ITERATIONS = 9  # a continuation step that needs more is too long
+
+
+@dataclass(frozen=True, eq=False)
+class Followed:
+    """How far along its burning branch a zone was followed.
+
+    Parameters
+    ----------
+    state : ZoneState or None
+        The last burning state, None where no burning state was found at all.
+    factor : float
+        Its residence time over the wanted one; 1 means that the zone burns.
+    iterations : int
+    """
+
+    state: ZoneState | None
+    factor: float
+    iterations: int
+
+    @property
+    def arrived(self) -> bool:
+        """Whether the zone burns at its own residence time."""
+        return self.state is not None and self.factor == 1.0
 
 
 @dataclass(frozen=True, eq=False)
@@ -78,7 +107,15 @@ def solve(zone: Zone, guess: ZoneState | None = None) -> Solved:
     found = _accepted(zone, outcome, spent)
     if found is not None:
         return found
-    outcome = follow(zone)
+    followed = follow(zone)
+    spent += followed.iterations
+    if followed.arrived:
+        assert followed.state is not None
+        burning = burning_streams(zone, followed.state)
+        return Solved(followed.state, "burning", burning, 0.0, spent)
+    last = start if followed.state is None else followed.state
+    rate = zone.throughflow_rate(zone.throughflow_volume(last))
+    outcome = march(zone, replace(last, rate=rate))
     return _judged(zone, outcome, spent + outcome.iterations)
 
 
@@ -115,10 +152,10 @@ def mean_temperature(zone: Zone, state: ZoneState) -> float:
     return float(zone.shares @ state.temperatures)
 
 
-def zone_burns(zone: Zone, state: ZoneState) -> bool:
-    """Say whether the mass-mean temperature has left the fresh inflow's far enough behind."""
+def burning_temperature(zone: Zone) -> float:
+    """Return the mass-mean temperature above which the zone as a whole counts as burning [K]."""
     inlet, hottest = _limits(zone.gas, zone.pressure, zone.mean_moles, zone.mean_enthalpy, zone)
-    return mean_temperature(zone, state) > inlet + BURNING_SHARE * (hottest - inlet)
+    return inlet + BURNING_SHARE * (hottest - inlet)
 
 
 def burning_streams(zone: Zone, state: ZoneState) -> NDArray[np.bool_]:
@@ -150,72 +187,99 @@ def at_size(zone: Zone, factor: float) -> Zone:
     return replace(zone, residence_time=zone.residence_time * factor)
 
 
-def enter(zone: Zone, factor: float = LONG_RESIDENCE) -> Outcome:
-    """Find the state of an enlarged zone from equilibrium, in time if need be.
-
-    Parameters
-    ----------
-    zone : Zone
-    factor : float
-        Enlargement of its volume or residence time.
-
-    Returns
-    -------
-    Outcome
-    """
-    large = at_size(zone, factor)
-    start = equilibrium_state(large)
-    outcome = newton(large, start)
-    if outcome.converged and outcome.stable and burning_streams(large, outcome.state).all():
-        return outcome
-    marched = march(large, start)
-    return replace(marched, iterations=marched.iterations + outcome.iterations)
-
-
-def follow(zone: Zone) -> Outcome:
+def follow(zone: Zone, longest: float = LONG_RESIDENCE, last_ratio: float = LAST_RATIO) -> Followed:
     """Follow the burning branch from a long residence time down to the zone's own.
 
     Parameters
     ----------
     zone : Zone
+    longest : float
+        Where to enter the branch, in wanted residence times.
+    last_ratio : float
+        Of residence times: how finely the end of the branch is resolved.
 
     Returns
     -------
-    Outcome
-        At the zone's own size: on the burning branch if it reaches that far, else what the last
-        burning state turns into.
+    Followed
     """
-    entered = enter(zone)
-    spent = entered.iterations
-    factor, state = LONG_RESIDENCE, entered.state
-    burning = int(burning_streams(zone, state).sum()) if entered.converged else 0
-    ratio = FIRST_RATIO
-    while factor > 1.0 and entered.converged:
-        trial = max(factor * ratio, 1.0)
-        smaller = at_size(zone, trial)
-        start = replace(state, rate=state.rate * factor / trial)
-        outcome = newton(smaller, start, 12)
+    state, spent = _entered(at_size(zone, longest))
+    if state is None:
+        return Followed(None, longest, spent)
+    followed = descend(partial(at_size, zone), state, longest, 1.0, FIRST_RATIO, last_ratio)
+    return replace(followed, iterations=followed.iterations + spent)
+
+
+def descend(
+    zone_at: Callable[[float], Zone],
+    state: ZoneState,
+    start: float,
+    stop: float,
+    first_ratio: float,
+    last_ratio: float,
+) -> Followed:
+    """Follow a burning state as one quantity falls, each step from the last burning state.
+
+    Single streams may go out on the way; the zone is followed as long as its mean burns.
+
+    Parameters
+    ----------
+    zone_at : callable
+        The zone at a value of the falling quantity.
+    state : ZoneState
+        Burning, at ``start``.
+    start, stop : float
+        Values of the falling quantity.
+    first_ratio, last_ratio : float
+        Of one value to the one before: the boldest step, and the one so small that losing the
+        branch on it is the end of the branch.
+
+    Returns
+    -------
+    Followed
+        Its factor is the last value with a burning state.
+    """
+    spent = 0
+    value, ratio = start, first_ratio
+    burning = _count_burning(zone_at(start), state) if len(state.moles) > 1 else 1
+    while value > stop:
+        trial = max(value * ratio, stop)
+        zone = zone_at(trial)
+        threshold = burning_temperature(zone)
+        guess = replace(state, rate=zone.throughflow_rate(zone.throughflow_volume(state)))
+        outcome = newton(zone, guess, STEP_ITERATIONS)
         spent += outcome.iterations
         kept = outcome.converged and outcome.stable
-        kept = kept and int(burning_streams(smaller, outcome.state).sum()) >= burning
-        if not kept and ratio < LAST_RATIO:
-            ratio = ratio**0.5
+        kept = kept and mean_temperature(zone, outcome.state) > threshold
+        if kept and zone.streams > 1:
+            fall = float(np.max(state.temperatures - outcome.state.temperatures))
+            kept = fall < GENTLE_FALL or _count_burning(zone, outcome.state) >= burning
+        if not kept and trial / value < last_ratio:
+            ratio = (trial / value) ** 0.5
             continue
         if not kept:
-            outcome = march(smaller, start)
+            outcome = march(zone, guess, threshold)
             spent += outcome.iterations
             if not outcome.converged:
-                return replace(outcome, iterations=spent)
-            burning = int(burning_streams(smaller, outcome.state).sum())
-            if not zone_burns(smaller, outcome.state):
-                state, factor = outcome.state, trial
-                break
-        state, factor = outcome.state, trial
-        ratio = max(ratio**1.5, FIRST_RATIO)
-    if factor == 1.0 and entered.converged:
-        return Outcome(state, True, 0.0, spent, True)
-    final = march(zone, replace(state, rate=state.rate * factor))
-    return replace(final, iterations=spent + final.iterations)
+                return Followed(state, value, spent)
+        state, value = outcome.state, trial
+        burning = _count_burning(zone, state) if zone.streams > 1 else 1
+        ratio = max(ratio**1.5, first_ratio)
+    return Followed(state, value, spent)
+
+
+def _entered(large: Zone) -> tuple[ZoneState | None, int]:
+    """Return a long zone's state from equilibrium, in time if need be."""
+    start = equilibrium_state(large)
+    outcome = newton(large, start)
+    if outcome.converged and outcome.stable and _all_burn(large, outcome.state):
+        return outcome.state, outcome.iterations
+    marched = march(large, start, burning_temperature(large))
+    spent = outcome.iterations + marched.iterations
+    return (marched.state if marched.converged else None), spent
+
+
+def _count_burning(zone: Zone, state: ZoneState) -> int:
+    return int(np.count_nonzero(burning_streams(zone, state)))
 
 
 def _started(zone: Zone) -> tuple[ZoneState, int]:
@@ -230,15 +294,23 @@ def _started(zone: Zone) -> tuple[ZoneState, int]:
         own = ZoneState(moles[place : place + 1], temperatures[place : place + 1], start.rate)
         outcome = newton(alone, own)
         spent += outcome.iterations
-        good = outcome.converged and outcome.stable
-        if not (good and burning_streams(alone, outcome.state).all()):
+        found = outcome.state
+        if not (outcome.converged and outcome.stable and _all_burn(alone, found)):
             outcome = march(alone, own)
             spent += outcome.iterations
-            if not (outcome.converged and burning_streams(alone, outcome.state).all()):
-                outcome = follow(alone)
-                spent += outcome.iterations
-        moles[place], temperatures[place] = outcome.state.moles[0], outcome.state.temperatures[0]
+            found = outcome.state
+            if not (outcome.converged and _all_burn(alone, found)):
+                followed = follow(alone)
+                spent += followed.iterations
+                if followed.arrived:
+                    assert followed.state is not None
+                    found = followed.state
+        moles[place], temperatures[place] = found.moles[0], found.temperatures[0]
     return ZoneState(moles, temperatures, start.rate), spent
+
+
+def _all_burn(zone: Zone, state: ZoneState) -> bool:
+    return bool(burning_streams(zone, state).all())
 
 
 def _alone(zone: Zone, state: ZoneState, place: int) -> Zone:
@@ -263,13 +335,15 @@ def _accepted(zone: Zone, outcome: Outcome, spent: int) -> Solved | None:
         return None
     burning = burning_streams(zone, outcome.state)
     if not burning.all():
-        if zone.streams == 1 or not zone_burns(zone, outcome.state):
+        if zone.streams == 1:
+            return None
+        if mean_temperature(zone, outcome.state) <= burning_temperature(zone):
             return None
         for place in np.flatnonzero(~burning):
             alone = _alone(zone, outcome.state, int(place))
-            best = follow(alone)
-            spent += best.iterations
-            if not best.converged or burning_streams(alone, best.state).all():
+            followed = follow(alone)
+            spent += followed.iterations
+            if followed.arrived:
                 return None
     return Solved(outcome.state, "burning", burning, outcome.step, spent)
 
@@ -278,7 +352,8 @@ def _judged(zone: Zone, outcome: Outcome, spent: int) -> Solved:
     burning = burning_streams(zone, outcome.state)
     if not outcome.converged:
         return Solved(outcome.state, "not_converged", burning, outcome.step, spent)
-    status: Status = "burning" if zone_burns(zone, outcome.state) else "blown_out"
+    burns = mean_temperature(zone, outcome.state) > burning_temperature(zone)
+    status: Status = "burning" if burns else "blown_out"
     return Solved(outcome.state, status, burning, outcome.step, spent)
 
 

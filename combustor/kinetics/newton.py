@@ -247,13 +247,15 @@ def newton(
     return Outcome(ZoneState(run.moles, run.temperatures, run.rate), False, size, count, False)
 
 
-def march(zone: Zone, start: ZoneState, most_steps: int = 400) -> Outcome:
+def march(zone: Zone, start: ZoneState, coldest: float = 0.0, most_steps: int = 400) -> Outcome:
     """Follow a zone in time by implicit steps until it is steady, then solve it exactly.
 
     Parameters
     ----------
     zone : Zone
     start : ZoneState
+    coldest : float
+        Mass-mean temperature at which to give up, when only a burning state is wanted [K]
     most_steps : int
         Steps in time to spend.
 
@@ -274,10 +276,13 @@ def march(zone: Zone, start: ZoneState, most_steps: int = 400) -> Outcome:
                 break
             continue
         state = outcome.state
+        if float(zone.shares @ state.temperatures) < coldest:
+            break
         time_step *= 3.0 if outcome.iterations <= 4 else 1.5
         if time_step * state.rate > 10.0:
             final = newton(zone, state, 12)
             spent += final.iterations
-            if final.converged and final.stable:
+            warm = float(zone.shares @ final.state.temperatures) >= coldest
+            if final.converged and final.stable and warm:
                 return Outcome(final.state, True, final.step, spent, True)
     return Outcome(state, False, np.inf, spent, False)

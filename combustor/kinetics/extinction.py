@@ -1,0 +1,155 @@
+"""Blow-out: where the burning branch ends."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from combustor.base.method import Method
+from combustor.fuel.gas import Gas, GasState
+from combustor.kinetics.branch import descend, follow, solve
+from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
+from combustor.kinetics.stirred import stirred_zone
+from combustor.kinetics.zone import Zone, ZoneState
+
+Array = NDArray[np.float64]
+
+STIRRED_BLOWOUT = Method(
+    key="stirred-blowout",
+    quantity="residence time below which a stirred reactor cannot burn",
+    source="continuation along the burning branch of a stirred reactor (Longwell and Weiss, "
+    "Industrial and Engineering Chemistry 47, 1955)",
+    reading="from memory",
+    note="adiabatic and perfectly mixed; flames in hardware blow out at 2 to 5 times this time",
+)
+
+SHORTEST_RESIDENCE = 1e-8  # s, shorter than any flame's blow-out
+LONGEST_RESIDENCE = 1.0  # s, where the branch is entered
+FINEST_RESIDENCE_RATIO = 0.998
+BOLDEST_FUEL_RATIO = 0.9
+FINEST_FUEL_RATIO = 0.99
+LEAST_FUEL_SHARE = 0.01  # of the operating fuel flow: where a search for blow-out stops
+
+
+@dataclass(frozen=True, eq=False)
+class Blowout:
+    """The end of a stirred reactor's burning branch.
+
+    Parameters
+    ----------
+    residence_time : float
+        The shortest found to burn, within 0.2 % of the end of the branch [s]
+    state : GasState
+        The last burning state.
+    loading : float
+        Mass flow per volume there [kg/(s m3)]
+    iterations : int
+        Newton iterations spent.
+    """
+
+    residence_time: float
+    state: GasState
+    loading: float
+    iterations: int
+
+
+def blowout_residence_time(
+    gas: Gas, pressure: float, enthalpy: float, mass_fractions: Array
+) -> Blowout | None:
+    """Find the residence time at which a stirred reactor blows out.
+
+    Followed along the burning branch from one second, in steps that shrink to 0.2 %, each from
+    the last burning state.
+
+    Parameters
+    ----------
+    gas : Gas
+    pressure : float
+        [Pa]
+    enthalpy : float
+        Of what flows in [J/kg]
+    mass_fractions : ndarray
+        Of what flows in [-]
+
+    Returns
+    -------
+    Blowout or None
+        None where the mixture does not burn even in one second.
+    """
+    zone = stirred_zone(gas, pressure, enthalpy, mass_fractions, SHORTEST_RESIDENCE)
+    longest = LONGEST_RESIDENCE / SHORTEST_RESIDENCE
+    followed = follow(zone, longest, FINEST_RESIDENCE_RATIO)
+    if followed.state is None:
+        return None
+    residence_time = followed.factor * SHORTEST_RESIDENCE
+    masses = np.maximum(followed.state.moles[0] * gas.rates.molar_masses, 0.0)
+    state = GasState(float(followed.state.temperatures[0]), pressure, masses, enthalpy)
+    density = gas.density(state.temperature, pressure, masses)
+    return Blowout(residence_time, state, density / residence_time, followed.iterations)
+
+
+@dataclass(frozen=True)
+class FuelBlowout:
+    """The least fuel with which a primary zone burns, air, pressure and temperatures held.
+
+    Parameters
+    ----------
+    fuel_flow : float
+        The least found to burn, within 1 % of blow-out [kg/s]
+    reached : bool
+        False where the zone still burnt with the least fuel tried, 1 % of what was given.
+    iterations : int
+        Newton iterations spent.
+    """
+
+    fuel_flow: float
+    reached: bool
+    iterations: int
+
+
+def blowout_fuel_flow(
+    gas: Gas,
+    pressure: float,
+    primary: PrimaryZone,
+    heat_loss: float = 0.0,
+    warm: ZoneState | None = None,
+) -> FuelBlowout | None:
+    """Reduce the fuel of a burning primary zone until it blows out.
+
+    Parameters
+    ----------
+    gas : Gas
+    pressure : float
+        [Pa]
+    primary : PrimaryZone
+        At its operating fuel flow.
+    heat_loss : float
+        At the operating fuel flow; falls with it [W]
+    warm : ZoneState, optional
+        Its solution, to save time.
+
+    Returns
+    -------
+    FuelBlowout or None
+        None where the zone does not burn with the fuel given.
+    """
+
+    def zone_at(share: float) -> Zone:
+        fuel = replace(primary.fuel, mass_flow=primary.fuel.mass_flow * share)
+        leaner = replace(primary, fuel=fuel)
+        fresh = fresh_bundle(gas, leaner, distribution_of(leaner))
+        return primary_zone(gas, pressure, leaner, fresh, heat_loss * share)
+
+    operating = solve(zone_at(1.0), warm)
+    if operating.status != "burning":
+        return None
+    followed = descend(
+        zone_at, operating.state, 1.0, LEAST_FUEL_SHARE, BOLDEST_FUEL_RATIO, FINEST_FUEL_RATIO
+    )
+    return FuelBlowout(
+        fuel_flow=primary.fuel.mass_flow * followed.factor,
+        reached=followed.factor > LEAST_FUEL_SHARE,
+        iterations=operating.iterations + followed.iterations,
+    )
