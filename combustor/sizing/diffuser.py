@@ -31,7 +31,8 @@ DUMP_LOSS_OVERALL = Method(
 DIFFUSER_LENGTH = Method(
     key="diffuser-length",
     quantity="diffuser length, unstalled",
-    source="included angle at 0.75 of first appreciable stall, Reneau, Johnston & Kline 1967",
+    source="included angle at 0.75 of first appreciable stall, Reneau, Johnston & Kline 1967, "
+    "and at most 14 deg",
     reading="from memory",
     validity={"length_ratio": (1.5, 20.0)},
     scatter="3 deg",
@@ -55,6 +56,7 @@ EFFECTIVENESS = 0.85
 DUMP_COEFFICIENT = 0.8
 DUMP_GAP_RATIO = 1.1
 STALL_MARGIN = 0.75
+WIDEST_ANGLE = math.radians(14.0)
 SHORTEST, LONGEST = 1.5, 20.0
 
 
@@ -89,7 +91,7 @@ class DiffuserShape:
 
 
 def unstalled_length_ratio(area_ratio: float) -> float:
-    """Return the least length over inlet gap that keeps 0.75 of the stall angle.
+    """Return the least length over inlet gap at 0.75 of the stall angle and at most 14 deg.
 
     Held to 1.5 to 20, the range of the chart; a longer one would be needed where the
     included angle that follows still exceeds the margin.
@@ -172,5 +174,9 @@ def choose(
     return smooth, sudden
 
 
+def _allowed_angle(length_ratio: float) -> float:
+    return min(STALL_MARGIN * stall_angle(length_ratio), WIDEST_ANGLE)
+
+
 def _angle_excess(length_ratio: float, area_ratio: float) -> float:
-    return plane_included_angle(length_ratio, area_ratio) - STALL_MARGIN * stall_angle(length_ratio)
+    return plane_included_angle(length_ratio, area_ratio) - _allowed_angle(length_ratio)

@@ -24,6 +24,8 @@ from combustor.sizing.diffuser import DiffuserShape
 from combustor.sizing.drill import nearest_drill
 from combustor.sizing.section import Section
 
+RowName = Literal["primary", "secondary", "dilution"]
+
 SWIRLER, DOME, LEAK = "swirler", "dome", "leakage"
 
 
@@ -31,7 +33,7 @@ SWIRLER, DOME, LEAK = "swirler", "dome", "leakage"
 class Row:
     """One row of jets: name and role are the same word."""
 
-    name: Literal["primary", "secondary", "dilution"]
+    name: RowName
     station: float
     count: int
 

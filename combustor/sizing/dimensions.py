@@ -1,0 +1,357 @@
+"""How each dimension came about: value, method, and the candidate that lost."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from combustor.airflow.jets import PENETRATION_ROW
+from combustor.hardware.metal import Opening
+from combustor.hardware.zone_air import PRIMARY_JET_SHARE
+from combustor.sizing import cooling, diffuser, liner_ratio, rows, swirler, zones
+from combustor.sizing.air_budget import AIR_BUDGET, DOME_SHARES, PREFERRED_DOME, PREFERRED_SWIRLER
+from combustor.sizing.drill import DRILL_STEPS
+from combustor.sizing.exit_pattern import pattern_factor_of
+from combustor.sizing.fire import FUEL_DEMAND, FUEL_DEMAND_SIMPLE
+from combustor.sizing.loop import AREAS
+from combustor.sizing.passes import State, Task
+from combustor.sizing.record import Candidate, Dimension
+from combustor.sizing.rounding import Rounded
+from combustor.sizing.sketch import SWIRLER
+
+
+def dimensions_of(task: Task, state: State, rounded: Rounded) -> tuple[Dimension, ...]:
+    """Return every sized dimension in the order it was found.
+
+    Parameters
+    ----------
+    task : Task
+    state : State
+        Settled.
+    rounded : Rounded
+        The drilled metal.
+    """
+    groups = (
+        _fuel(task),
+        _casing(task, rounded),
+        _liner(task, state, rounded),
+        _diffuser(task, state),
+        _zones(task, state, rounded),
+        _budget(task, state),
+        _swirler(task, state, rounded),
+        _rows(task, state, rounded),
+        _films(task, state, rounded),
+    )
+    return tuple(dimension for group in groups for dimension in group)
+
+
+def _fuel(task: Task) -> Iterator[Dimension]:
+    duty = task.duty
+    point = task.case.design_point
+    if point.exit_temperature is None:
+        yield Dimension("fuel flow", duty.fuel_flow, "mass_flow", diffuser.STATED)
+        return
+    rise = point.exit_temperature - duty.inlet.temperature
+    simple = duty.inlet.mass_flow * duty.inlet.heat_capacity * rise / duty.lower_heating_value
+    yield Dimension(
+        "fuel flow",
+        duty.fuel_flow,
+        "mass_flow",
+        FUEL_DEMAND,
+        Candidate(simple, FUEL_DEMAND_SIMPLE, "heat capacity rises with temperature"),
+        f"exit at {point.exit_temperature:.0f} K, overall equivalence ratio {duty.overall:.3f}",
+    )
+
+
+def _casing(task: Task, rounded: Rounded) -> Iterator[Dimension]:
+    casing, metal = task.casing, rounded.hardware
+    yield Dimension(
+        "reference area", casing.area, "area", casing.method, casing.candidate, casing.note
+    )
+    note = f"rounded up; room for {1e3 * (task.case.combustor.casing_diameter or 0.0):.0f} mm"
+    yield Dimension("casing bore", metal.reference_height, "length", casing.method, None, note)
+    velocity = task.duty.inlet.mass_flow / (task.duty.density * casing.area)
+    yield Dimension("reference velocity", velocity, "velocity", casing.method)
+
+
+def _liner(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
+    frame, sketch = state.frame, rounded.sketch
+    area = task.section.area(frame.liner_height)
+    yield Dimension(
+        "liner area ratio",
+        area / task.casing.area,
+        "ratio",
+        frame.ratio_method,
+        frame.ratio_candidate,
+        frame.ratio_note,
+    )
+    yield Dimension(
+        "liner diameter", frame.liner_height, "length", frame.ratio_method, None, "to 1 mm"
+    )
+    yield Dimension("annulus gap", sketch.annulus_gap, "length", frame.ratio_method)
+    yield Dimension(
+        "annulus velocity",
+        annulus_velocity(task, state, rounded),
+        "velocity",
+        liner_ratio.ANNULUS_VELOCITY,
+    )
+
+
+def annulus_velocity(task: Task, state: State, rounded: Rounded) -> float:
+    """Return the cold velocity of all annulus air at the head of the annulus [m/s]."""
+    share = 1.0 - state.budget.front
+    area = rounded.sketch.annulus_area * task.section.cans
+    return share * task.duty.inlet.mass_flow / (task.duty.density * area)
+
+
+def _diffuser(task: Task, state: State) -> Iterator[Dimension]:
+    taken, other = state.frame.diffuser, state.frame.rival_diffuser
+    law = {"faired": diffuser.FAIRED_LOSS, "dump": diffuser.DUMP_LOSS_OVERALL}
+    why = "more loss" if other.loss_coefficient > taken.loss_coefficient else "would stall"
+    if task.case.targets.diffuser_kind is not None:
+        why = "kind stated in the case"
+    yield Dimension(
+        "diffuser area ratio", taken.area_ratio, "ratio", diffuser.DIFFUSER_AREA, None, taken.kind
+    )
+    yield Dimension(
+        "diffuser length",
+        taken.length,
+        "length",
+        diffuser.DIFFUSER_LENGTH,
+        Candidate(other.length, diffuser.DIFFUSER_LENGTH, f"{other.kind}: {why}"),
+        f"included angle {math.degrees(taken.included_angle):.1f} deg, first stall at "
+        f"{math.degrees(taken.stall_angle):.1f} deg",
+    )
+    stated = task.case.targets.diffuser_loss_coefficient is not None
+    yield Dimension(
+        "diffuser loss coefficient",
+        taken.loss_coefficient,
+        "ratio",
+        diffuser.STATED if stated else law[taken.kind],
+        Candidate(other.loss_coefficient, law[other.kind], f"{other.kind}: {why}"),
+        "over the inlet dynamic head",
+    )
+
+
+def _zones(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
+    frame, targets = state.frame, task.case.targets
+    primary, secondary, end = frame.zone_ends
+    height = frame.liner_height
+    stated = diffuser.STATED
+    yield Dimension(
+        "primary zone length",
+        primary,
+        "length",
+        zones.PRIMARY_LENGTH if targets.primary_length is None else stated,
+        Candidate(
+            zones.SHORTEST_PRIMARY_RATIO * height, zones.PRIMARY_LENGTH, "low end of the range"
+        ),
+        f"{primary / height:.2f} liner diameters",
+    )
+    yield Dimension(
+        "secondary zone length",
+        secondary - primary,
+        "length",
+        zones.SECONDARY_LENGTH if targets.secondary_length is None else stated,
+        None,
+        f"{(secondary - primary) / height:.2f} liner diameters",
+    )
+    yield _dilution_length(task, state, end - secondary)
+    reached = pattern_factor_of(rounded.hardware, task.duty.inlet, rounded.split)
+    yield Dimension(
+        "liner length",
+        end,
+        "length",
+        zones.PATTERN_FACTOR,
+        None,
+        f"{end / height:.2f} liner diameters; pattern factor {reached:.3f}",
+    )
+
+
+def _dilution_length(task: Task, state: State, length: float) -> Dimension:
+    frame = state.frame
+    chart = frame.dilution_ratio_chart * frame.liner_height
+    law = frame.length_ratio_needed * frame.liner_height - frame.zone_ends[1]
+    if task.case.targets.dilution_length is not None:
+        method, rival = diffuser.STATED, Candidate(chart, zones.DILUTION_LENGTH, "stated instead")
+    elif abs(length - chart) <= 2e-3:
+        method = zones.DILUTION_LENGTH
+        rival = Candidate(law, zones.PATTERN_FACTOR, "shorter, and the casing has room for both")
+    else:
+        method = zones.PATTERN_FACTOR
+        reason = "shorter" if chart < length else "longer than the casing has room for"
+        rival = Candidate(chart, zones.DILUTION_LENGTH, reason)
+    note = f"{length / frame.liner_height:.2f} liner diameters"
+    return Dimension("dilution zone length", length, "length", method, rival, note)
+
+
+def _budget(task: Task, state: State) -> Iterator[Dimension]:
+    shares, targets = state.budget, task.case.targets
+    stated = diffuser.STATED
+    yield Dimension(
+        "swirler air",
+        shares.swirler,
+        "fraction",
+        AIR_BUDGET if targets.swirler_air is None else stated,
+        Candidate(PREFERRED_SWIRLER, DOME_SHARES, "would miss the zone equivalence ratios"),
+    )
+    yield Dimension(
+        "dome air",
+        shares.dome,
+        "fraction",
+        AIR_BUDGET if targets.dome_air is None else stated,
+        Candidate(PREFERRED_DOME, DOME_SHARES, "would miss the zone equivalence ratios"),
+    )
+    turned = f"{task.case.model.primary_jet_share:.0%} of it turns upstream"
+    yield Dimension("primary row air", shares.primary, "fraction", PRIMARY_JET_SHARE, None, turned)
+    yield Dimension("secondary row air", shares.secondary, "fraction", AIR_BUDGET)
+    yield Dimension("dilution row air", shares.dilution, "fraction", AIR_BUDGET)
+    yield Dimension(
+        "film air",
+        shares.film,
+        "fraction",
+        cooling.FILM_AIR if targets.film_air is None else stated,
+        Candidate(cooling.USUAL_FILM_AIR, cooling.FILM_AIR_SHARE, "a range, blind to the duty"),
+    )
+    yield Dimension("leakage", shares.leak, "fraction", stated)
+
+
+def _swirler(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
+    opening = rounded.hardware.opening(SWIRLER)
+    vanes = opening.swirler
+    assert vanes is not None
+    flow = rounded.split.opening(SWIRLER)
+    head = (
+        0.5
+        * task.duty.density
+        * (task.duty.inlet.mass_flow / (task.duty.density * task.casing.area)) ** 2
+    )
+    ratio = swirler.swirler_area_ratio(
+        state.budget.swirler,
+        (flow.driving_pressure - flow.liner_pressure) / head,
+        vanes.vane_angle,
+        vanes.vane_loss,
+        task.section.area(state.frame.liner_height) / task.casing.area,
+    )
+    yield Dimension(
+        "swirler area",
+        opening.area,
+        "area",
+        AREAS,
+        Candidate(
+            ratio * task.casing.area / task.section.cans,
+            swirler.SWIRLER_AREA,
+            "by its equation on the drop to liner static; the split counts the drop to total",
+        ),
+        f"passes {flow.mass_flow / task.duty.inlet.mass_flow:.1%} of the air",
+    )
+    yield Dimension(
+        "swirler hub diameter",
+        vanes.hub_diameter,
+        "length",
+        swirler.VANE_PRACTICE,
+        None,
+        "to 0.1 mm",
+    )
+    yield Dimension("swirler tip diameter", vanes.tip_diameter, "length", AREAS, None, "to 0.1 mm")
+    yield Dimension("swirler vane angle", vanes.vane_angle, "angle", swirler.VANE_PRACTICE)
+    yield Dimension("swirler vanes", vanes.vane_count, "count", swirler.VANE_PRACTICE)
+    number = swirler.swirl_number(vanes.hub_diameter, vanes.tip_diameter, vanes.vane_angle)
+    yield Dimension("swirl number", number, "ratio", swirler.SWIRL_NUMBER)
+    yield Dimension(
+        "swirler recirculation",
+        swirler.recirculated_share(number),
+        "ratio",
+        swirler.RECIRCULATION,
+        None,
+        "recirculated over swirler air, order of magnitude; about "
+        f"{2e3 * vanes.tip_diameter:.0f} mm long",
+    )
+
+
+def _rows(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
+    targets = task.case.targets
+    stated = {
+        "primary": targets.primary_holes,
+        "secondary": targets.secondary_holes,
+        "dilution": targets.dilution_holes,
+    }
+    for row in rounded.sketch.rows:
+        plan, opening = state.plans[row.name], rounded.hardware.opening(row.name)
+        flow, diameter = rounded.split.opening(row.name), _diameter(opening)
+        pitch = rows.pitch_over_diameter(rounded.sketch.perimeter, row.count, diameter)
+        yield Dimension(
+            f"{row.name} row: holes",
+            row.count,
+            "count",
+            rows.ROW_COUNT if stated[row.name] is None else diffuser.STATED,
+            Candidate(
+                plan.best_mixing_count,
+                rows.HOLDEMAN_COUNT,
+                "best mixing; the jets' reach was put first",
+            ),
+            plan.bound or f"{plan.free_count:.2f} before rounding",
+        )
+        yield Dimension(
+            f"{row.name} row: hole diameter",
+            diameter,
+            "length",
+            AREAS,
+            Candidate(plan.hole_diameter, DRILL_STEPS, "before rounding to a drill"),
+            f"{pitch:.1f} diameters from hole to hole",
+        )
+        yield Dimension(f"{row.name} row: position", row.station, "length", rows.ROW_POSITION)
+        yield Dimension(
+            f"{row.name} row: penetration",
+            flow.penetration or 0.0,
+            "length",
+            PENETRATION_ROW,
+            Candidate(
+                rows.wanted_penetration(task.section, state.frame.liner_height),
+                rows.ROW_COUNT,
+                "aimed at; the whole count gives the value shown",
+            ),
+            f"momentum ratio {flow.momentum_flux_ratio:.1f}",
+        )
+
+
+def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
+    slots, film_plan = rounded.sketch.slots, state.film_plan
+    assert film_plan is not None
+    targets = task.case.targets
+    stations = [ring.station for ring in slots]
+    pitches = [
+        b - a for a, b in zip(stations, [*stations[1:], state.frame.liner_length], strict=True)
+    ]
+    yield Dimension("film slots", len(slots), "count", cooling.SLOT_PITCH)
+    yield Dimension(
+        "film slot pitch, widest",
+        max(pitches),
+        "length",
+        cooling.SLOT_PITCH if targets.slot_pitch is None else diffuser.STATED,
+        None,
+        f"closest {1e3 * min(pitches):.0f} mm",
+    )
+    yield Dimension(
+        "film slot height",
+        slots[0].height,
+        "length",
+        cooling.SLOT_HEIGHT if targets.slot_height is None else diffuser.STATED,
+    )
+    yield Dimension("film slot lip", slots[0].lip_thickness, "length", cooling.SLOT_HEIGHT)
+    for ring, peak in zip(slots, film_plan.peak, strict=True):
+        opening = rounded.hardware.opening(ring.name)
+        yield Dimension(
+            f"{ring.name}: metering holes",
+            opening.count,
+            "count",
+            cooling.METERING_HOLES,
+            None,
+            f"{1e3 * _diameter(opening):.1f} mm at x {1e3 * ring.station:.0f} mm; panel ends at "
+            f"{peak:.0f} K on this film alone",
+        )
+
+
+def _diameter(opening: Opening) -> float:
+    assert opening.diameter is not None
+    return opening.diameter

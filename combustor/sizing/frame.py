@@ -1,0 +1,311 @@
+"""Liner, diffuser and zone lengths inside a casing."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, replace
+
+from combustor.base.errors import InfeasibleError
+from combustor.base.method import Method, Notice
+from combustor.case.schema import Case, Targets
+from combustor.sizing import liner_ratio as ratios
+from combustor.sizing import zones
+from combustor.sizing.casing import Casing
+from combustor.sizing.diffuser import STATED, DiffuserShape, choose
+from combustor.sizing.duty import Duty
+from combustor.sizing.record import Candidate
+from combustor.sizing.reference_area import corrected_loss
+from combustor.sizing.section import Section
+
+LINER_FITS_LENGTH = Method(
+    key="liner-fits-length",
+    quantity="liner area ratio that lets the length for the pattern factor fit",
+    source="longest liner the casing holds over the length in liner heights that the pattern "
+    "factor needs, Lefebvre 1984",
+    reading="from memory",
+)
+
+# spare length against the rounding of holes: the loss factor is only known afterwards
+LENGTH_MARGIN = 1.01
+LEAST_DILUTION_RATIO = 0.5
+_RATIO_STEP = 0.0025
+
+
+@dataclass(frozen=True)
+class LossShares:
+    """Losses as fractions of the inlet total pressure.
+
+    ``jets`` is the mean drop across the liner wall that drives its jets.
+    """
+
+    diffuser: float
+    hot: float
+    jets: float
+
+
+@dataclass(frozen=True)
+class Frame:
+    """Liner, diffuser and lengths.
+
+    Parameters
+    ----------
+    liner_height : float
+        Rounded to a millimetre [m]
+    ratio : float
+        Liner area over reference area as wanted before rounding [-]
+    ratio_method, ratio_candidate, ratio_note : how it came about
+    diffuser, rival_diffuser : DiffuserShape
+    zone_ends : tuple of float
+        [m]
+    length_ratio_needed : float
+        Liner length over height by the pattern-factor law [-]
+    dilution_ratio_chart : float
+        Dilution length over height by the charts [-]
+    loss_factor : float
+        Liner loss over reference head [-]
+    notices : tuple of Notice
+    """
+
+    liner_height: float
+    ratio: float
+    ratio_method: Method
+    ratio_candidate: Candidate
+    ratio_note: str
+    diffuser: DiffuserShape
+    rival_diffuser: DiffuserShape
+    zone_ends: tuple[float, float, float]
+    length_ratio_needed: float
+    dilution_ratio_chart: float
+    loss_factor: float
+    notices: tuple[Notice, ...]
+
+    @property
+    def liner_length(self) -> float:
+        """Dome face to liner exit [m]."""
+        return self.zone_ends[-1]
+
+
+def highest_annulus_velocity(duty: Duty, targets: Targets) -> float:
+    """Return the stated annulus velocity, or the most that practice allows [m/s]."""
+    if targets.annulus_velocity is not None:
+        return targets.annulus_velocity
+    by_mach = ratios.HIGHEST_ANNULUS_MACH * duty.speed_of_sound
+    return min(ratios.HIGHEST_ANNULUS_VELOCITY, by_mach)
+
+
+def frame_of(
+    case: Case,
+    duty: Duty,
+    section: Section,
+    casing: Casing,
+    loss: LossShares,
+    front_share: float,
+    is_firm: bool = True,
+) -> Frame:
+    """Return liner, diffuser and lengths.
+
+    Parameters
+    ----------
+    case : Case
+    duty : Duty
+    section : Section
+    casing : Casing
+    loss : LossShares
+        Latest estimate of the parts of the pressure loss.
+    front_share : float
+        Share of the air through swirler and dome [-]
+    is_firm : bool
+        False while the losses are only guessed: a liner a little too long is let pass.
+
+    Raises
+    ------
+    InfeasibleError
+        The length for the pattern factor does not fit the casing.
+    """
+    targets, inlet = case.targets, duty.inlet
+    head = corrected_loss(
+        inlet.mass_flow, inlet.temperature, inlet.pressure, casing.area, inlet.gas_constant
+    )
+    loss_factor = loss.jets / head
+    needed = LENGTH_MARGIN * zones.length_ratio_for(
+        targets.pattern_factor, loss_factor, section.is_round
+    )
+    needed = max(needed, _shortest(targets))
+    builder = _Builder(case, duty, section, casing, needed, is_firm)
+    ratio, method, rival, note = _liner_ratio(builder, head, front_share)
+    height = round(section.height(ratio * casing.area), 3)
+    shape, other = builder.diffuser(height)
+    chart = zones.dilution_length_ratio(targets.pattern_factor, loss_factor)
+    ends = _zone_ends(builder, height, chart.value, builder.room(height))
+    return Frame(
+        height,
+        ratio,
+        method,
+        rival,
+        note,
+        shape,
+        other,
+        ends,
+        needed / LENGTH_MARGIN,
+        chart.value,
+        loss_factor,
+        chart.notices,
+    )
+
+
+@dataclass(frozen=True)
+class _Builder:
+    """What every step of this module needs."""
+
+    case: Case
+    duty: Duty
+    section: Section
+    casing: Casing
+    length_ratio: float
+    is_firm: bool
+
+    def annulus_area(self, height: float) -> float:
+        outside = height + 2.0 * self.case.targets.sheet_thickness
+        return self.casing.area - self.section.area(outside)
+
+    def diffuser(self, height: float) -> tuple[DiffuserShape, DiffuserShape]:
+        inlet = self.case.combustor.inlet_annulus
+        assert inlet is not None  # required of a case without metal
+        gap = 0.5 * (inlet.outer - inlet.inner)
+        targets = self.case.targets
+        taken, other = choose(inlet.area, gap, self.annulus_area(height), targets.diffuser_kind)
+        if targets.diffuser_loss_coefficient is not None:
+            taken = replace(taken, loss_coefficient=targets.diffuser_loss_coefficient)
+        return taken, other
+
+    def room(self, height: float) -> float:
+        """Return the longest liner the casing holds."""
+        combustor = self.case.combustor
+        assert combustor.casing_length is not None
+        used = combustor.transition_length
+        if combustor.flow == "straight":
+            used += self.diffuser(height)[0].length
+        return combustor.casing_length - used
+
+    def stated_length(self) -> float | None:
+        """Return the liner length when all three zones are stated."""
+        targets = self.case.targets
+        stated = (targets.primary_length, targets.secondary_length, targets.dilution_length)
+        if any(length is None for length in stated):
+            return None
+        return sum(length for length in stated if length is not None)
+
+    def fits(self, height: float) -> bool:
+        length = self.stated_length()
+        if length is None:
+            length = self.length_ratio * height
+        return length <= self.room(height)
+
+
+def _shortest(targets: Targets) -> float:
+    """Return the least liner length over height that holds three zones."""
+    return zones.PRIMARY_LENGTH_RATIO + zones.SECONDARY_LENGTH_RATIO + LEAST_DILUTION_RATIO
+
+
+def _liner_ratio(
+    builder: _Builder, head: float, front_share: float
+) -> tuple[float, Method, Candidate, str]:
+    targets = builder.case.targets
+    layout = builder.case.combustor.layout
+    simple = Candidate(
+        ratios.SIMPLE_RATIOS[layout], ratios.SIMPLE_RATIO, "a rule by layout, blind to the losses"
+    )
+    if targets.liner_area_ratio is not None:
+        ratio = targets.liner_area_ratio
+        _check_length(builder, ratio)
+        return ratio, STATED, simple, "stated in the case"
+    inlet_annulus = builder.case.combustor.inlet_annulus
+    assert inlet_annulus is not None
+    guess = builder.section.height(0.65 * builder.casing.area)
+    optimum = ratios.optimum_ratio(
+        front_share,
+        builder.diffuser(guess)[0].loss_coefficient,
+        builder.casing.area / inlet_annulus.area,
+        (builder.case.targets.pressure_loss or 0.0) / head,
+    )
+    ratio, method, rival, note = optimum.value, ratios.OPTIMUM_RATIO, simple, optimum.bounded
+    wide = ratios.ratio_for_annulus_velocity(
+        highest_annulus_velocity(builder.duty, targets),
+        (1.0 - front_share) * builder.duty.inlet.mass_flow,
+        builder.duty.density,
+        builder.casing.area,
+    )
+    wide = max(wide, ratios.LOWEST_RATIO)
+    if wide < ratio or targets.annulus_velocity is not None:
+        rival = Candidate(ratio, method, "the annulus would be too fast")
+        ratio, method = wide, ratios.ANNULUS_VELOCITY
+        note = f"annulus at {highest_annulus_velocity(builder.duty, targets):.0f} m/s"
+    height = builder.section.height(ratio * builder.casing.area)
+    if not builder.fits(height):
+        rival = Candidate(ratio, method, "its liner would be too long for the casing")
+        ratio, method = _longest_fit(builder, ratio), LINER_FITS_LENGTH
+        note = (
+            f"{builder.length_ratio:.2f} liner heights in "
+            f"{1e3 * builder.room(builder.section.height(ratio * builder.casing.area)):.0f} mm"
+        )
+    return ratio, method, rival, note
+
+
+def _longest_fit(builder: _Builder, ratio: float) -> float:
+    """Return the largest liner ratio whose length fits the casing.
+
+    A scan: a smaller liner is shorter, but leaves a wider annulus and a longer diffuser.
+    """
+    trial = ratio
+    while trial > ratios.LOWEST_RATIO:
+        if builder.fits(builder.section.height(trial * builder.casing.area)):
+            return trial
+        trial -= _RATIO_STEP
+    _check_length(builder, ratios.LOWEST_RATIO)
+    return ratios.LOWEST_RATIO
+
+
+def _check_length(builder: _Builder, ratio: float) -> None:
+    height = builder.section.height(ratio * builder.casing.area)
+    if builder.fits(height) or not builder.is_firm:
+        return
+    room = builder.room(height)
+    targets = builder.case.targets
+    stated = builder.stated_length()
+    needed = builder.length_ratio * height if stated is None else stated
+    reason = (
+        "the stated zone lengths add up to"
+        if stated is not None
+        else f"a pattern factor of {targets.pattern_factor:.3g} needs a liner of "
+        f"{builder.length_ratio:.2f} liner heights, with the smallest liner"
+    )
+    raise InfeasibleError(
+        (
+            f"{reason} {1e3 * needed:.0f} mm",
+            f"the casing of {1e3 * (builder.case.combustor.casing_length or 0.0):.0f} mm leaves "
+            f"{1e3 * room:.0f} mm beside diffuser and transition duct",
+            "the liner does not fit",
+        ),
+        "Allow a higher pattern_factor or pressure_loss, a shorter transition, or a longer casing.",
+    )
+
+
+def _zone_ends(
+    builder: _Builder, height: float, chart: float, room: float
+) -> tuple[float, float, float]:
+    targets = builder.case.targets
+    primary = _whole(targets.primary_length or zones.PRIMARY_LENGTH_RATIO * height)
+    secondary = _whole(targets.secondary_length or zones.SECONDARY_LENGTH_RATIO * height)
+    if targets.dilution_length is not None:
+        dilution = _whole(targets.dilution_length)
+    else:
+        by_law = builder.length_ratio * height - primary - secondary
+        # the longer of the two rules where the casing has the room, the law's length at least
+        most = math.floor(room * 1e3 + 1e-6) / 1e3 - primary - secondary
+        dilution = min(max(by_law, chart * height), most)
+        dilution = max(_whole(dilution), _whole(LEAST_DILUTION_RATIO * height))
+    return primary, round(primary + secondary, 3), round(primary + secondary + dilution, 3)
+
+
+def _whole(length: float) -> float:
+    return round(length, 3)

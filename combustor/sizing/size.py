@@ -1,0 +1,175 @@
+"""From targets to metal: the steps of sizing, in order."""
+
+from __future__ import annotations
+
+from combustor.base.convergence import Convergence
+from combustor.base.errors import InputError, Problem
+from combustor.case.schema import Case
+from combustor.fuel.gas import Gas
+from combustor.fuel.record import Fuel
+from combustor.sizing.air_budget import PREFERRED_DOME, PREFERRED_SWIRLER
+from combustor.sizing.casing import casing_of
+from combustor.sizing.dimensions import dimensions_of
+from combustor.sizing.duty import duty_of
+from combustor.sizing.findings import findings_of
+from combustor.sizing.frame import highest_annulus_velocity
+from combustor.sizing.passes import State, Task, first_state, next_state
+from combustor.sizing.record import Design
+from combustor.sizing.rounding import Rounded, round_to_drills
+from combustor.sizing.section import Section
+
+FREE_PASSES = 8
+FROZEN_PASSES = 12
+SETTLED = 1e-5
+
+
+def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
+    """Return the metal that meets the targets of a case at its design point.
+
+    Parameters
+    ----------
+    case : Case
+        Its ``[hardware]`` is not read.
+    fuel : Fuel
+    gas : Gas
+        Loaded with the fuel's mechanism.
+
+    Returns
+    -------
+    Design
+        Whole holes and drillable diameters; ``Design.converged`` says whether the re-solved
+        zones lie within 0.03 and the loss within 0.1 points of their targets.
+
+    Raises
+    ------
+    InputError
+        A layout or front end that sizing does not know, or an entry it needs is missing.
+    InfeasibleError
+        The targets cannot be met together; carries the chain of causes.
+    """
+    refuse_unsized(case)
+    task = task_of(case, fuel, gas)
+    state, change = settle(task)
+    rounded = round_to_drills(task, state)
+    return Design(
+        hardware=rounded.hardware,
+        dimensions=dimensions_of(task, state, rounded),
+        findings=findings_of(task, state, rounded),
+        split=rounded.split,
+        zones=rounded.zones,
+        pressure_loss_target=case.targets.pressure_loss or 0.0,
+        fuel_flow=task.duty.fuel_flow,
+        convergence=_convergence(state, change, rounded),
+    )
+
+
+def task_of(case: Case, fuel: Fuel, gas: Gas) -> Task:
+    """Return the duty of the design point and the casing that takes it."""
+    duty = duty_of(case, fuel, gas)
+    section = Section(case.combustor.cans)
+    assert case.targets.pressure_loss is not None and case.combustor.casing_diameter is not None
+    casing = casing_of(
+        duty,
+        section,
+        case.combustor.layout,
+        case.targets.pressure_loss,
+        case.combustor.casing_diameter,
+        highest_annulus_velocity(duty, case.targets),
+        1.0 - PREFERRED_SWIRLER - PREFERRED_DOME,
+    )
+    return Task(case, duty, section, casing)
+
+
+def settle(task: Task) -> tuple[State, float]:
+    """Return the state that the passes settle on, and the last change of any share.
+
+    Lengths, counts and positions follow until they repeat, then they are held while the
+    shares settle.
+    """
+    state = first_state(task)
+    for _ in range(FREE_PASSES):
+        before, state = state, next_state(task, state, frozen=False)
+        if state.sketch == before.sketch and _change(before, state) < SETTLED:
+            break
+    change = 1.0
+    for _ in range(FROZEN_PASSES):
+        before, state = state, next_state(task, state, frozen=True)
+        change = _change(before, state)
+        if change < SETTLED:
+            break
+    return state, change
+
+
+def refuse_unsized(case: Case) -> None:
+    """Refuse what sizing does not know, and what it cannot do without; all at once.
+
+    Raises
+    ------
+    InputError
+    """
+    combustor, targets = case.combustor, case.targets
+    problems = []
+    if combustor.layout != "can":
+        problems.append(
+            Problem(
+                "sizing knows cans only",
+                'set layout = "can", or state the metal under [hardware] and rate it',
+                "combustor.layout",
+                combustor.layout,
+            )
+        )
+    if targets.front_end != "diffusion":
+        problems.append(
+            Problem(
+                "sizing knows diffusion front ends only",
+                'set front_end = "diffusion", or state the metal under [hardware]',
+                "targets.front_end",
+                targets.front_end,
+            )
+        )
+    if case.model.primary_jet_share < LEAST_JET_SHARE:
+        problems.append(
+            Problem(
+                "too little of the primary row turns upstream to size the row by",
+                f"{LEAST_JET_SHARE} to 1; about 0.5 is usual",
+                "model.primary_jet_share",
+                case.model.primary_jet_share,
+            )
+        )
+    needed = {
+        "targets.pressure_loss": targets.pressure_loss,
+        "combustor.casing_length": combustor.casing_length,
+        "combustor.inlet_annulus": combustor.inlet_annulus,
+        "combustor.exit_annulus": combustor.exit_annulus,
+    }
+    if combustor.layout == "can":
+        needed["combustor.casing_diameter"] = combustor.casing_diameter
+    problems += [
+        Problem("missing", "sizing needs it", key) for key, value in needed.items() if value is None
+    ]
+    if problems:
+        raise InputError(problems)
+
+
+LEAST_JET_SHARE = 0.2
+
+
+def _change(before: State, after: State) -> float:
+    if before.shares.keys() != after.shares.keys():
+        return 1.0
+    return max(abs(after.shares[name] - before.shares[name]) for name in after.shares)
+
+
+def _convergence(state: State, change: float, rounded: Rounded) -> Convergence:
+    assert state.fit is not None
+    fit = state.fit.convergence
+    messages = []
+    if not fit.converged:
+        messages.append(fit.message)
+    if change >= SETTLED:
+        messages.append("air shares do not settle")
+    if rounded.miss > 1.0:
+        messages.append("whole holes and drill sizes miss a target by more than its tolerance")
+    if not rounded.split.convergence.converged:
+        messages.append(rounded.split.convergence.message)
+    return Convergence(not messages, rounded.miss, fit.iterations, "; ".join(messages))
