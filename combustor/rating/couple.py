@@ -1,0 +1,156 @@
+"""One operating point: air split, fire and wall solved in turn until they agree."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from combustor.airflow.result import AirSplit, LinerGas
+from combustor.airflow.split import split
+from combustor.base.convergence import Convergence
+from combustor.fuel.gas import Gas
+from combustor.fuel.record import Fuel
+from combustor.hardware.metal import Hardware
+from combustor.heat.wall import WallMarch
+from combustor.kinetics.chain import Chain
+from combustor.rating.fire import Fire, layout_of, light, liner_gas_of
+from combustor.rating.operating import Operating
+from combustor.rating.settings import Settings
+from combustor.rating.walls import annulus_heat_of, heat_losses_of, walls_of
+from combustor.sizing.profile import liner_profile
+
+
+@dataclass(frozen=True)
+class Coupled:
+    """What split, fire and wall agreed on.
+
+    Parameters
+    ----------
+    split : AirSplit
+    fire : Fire
+        Fed by ``split``; blown out, it has no exit.
+    walls : tuple of WallMarch
+        Beside ``fire``; empty when blown out.
+    convergence : Convergence
+        Residual: the largest change of an opening's flow over the inlet air between the last
+        two passes.
+    """
+
+    split: AirSplit
+    fire: Fire
+    walls: tuple[WallMarch, ...]
+    convergence: Convergence
+
+
+def couple(
+    gas: Gas, fuel: Fuel, operating: Operating, hardware: Hardware, settings: Settings
+) -> Coupled:
+    """Solve one operating point.
+
+    They agree when, from one pass to the next, no opening's flow changes by more than
+    ``settings.tolerance`` of the inlet air, the exit temperature by more than
+    ``settings.temperature_tolerance``, nor the heat through the wall by more than a
+    millionth of the fuel's heat; where an exit temperature is asked for, it is met within
+    the same temperature tolerance.
+    """
+    layout = layout_of(hardware, settings)
+    fuel_flow = operating.fuel_flow
+    solved = split(hardware, operating.inlet)
+    solved = split(
+        hardware, operating.inlet, _first_fire(operating, hardware, solved, settings), guess=solved
+    )
+    warm: Chain | None = None
+    losses: list[float] | None = None
+    walls: tuple[WallMarch, ...] = ()
+    previous: Fire | None = None
+    message = ""
+    change = np.inf
+    for passes in range(1, settings.passes + 1):
+        if not solved.convergence.converged:
+            message = f"air split: {solved.convergence.message}"
+            break
+        fire = light(gas, operating, hardware, layout, solved, fuel_flow, settings, warm, losses)
+        if fire.chain.status == "blown_out":
+            return Coupled(solved, fire, (), Convergence(True, 0.0, passes))
+        if fire.exit is None:
+            message = f"chain of reactors: {fire.chain.convergence.message}"
+            break
+        walls = walls_of(gas, operating, hardware, solved, fire, fuel, settings)
+        if not all(wall.convergence.converged for wall in walls):
+            message = "wall: a heat balance did not close"
+            break
+        new_losses = heat_losses_of(fire, walls)
+        following = split(
+            hardware,
+            operating.inlet,
+            liner_gas_of(gas, operating, solved, fire),
+            annulus_heat_of(walls),
+            guess=solved,
+        )
+        change = _change(solved, following)
+        next_fuel = _next_fuel_flow(operating, gas, fire)
+        if (
+            losses is not None
+            and previous is not None
+            and previous.exit is not None
+            and change < settings.tolerance
+            and abs(fire.exit.temperature - previous.exit.temperature)
+            < settings.temperature_tolerance
+            and _heat_moved(losses, new_losses) < 1e-6 * fuel_flow * operating.lower_heating_value
+            and _temperature_met(operating, fire, settings)
+        ):
+            return Coupled(solved, fire, walls, Convergence(True, change, passes))
+        previous, warm, losses, solved, fuel_flow = (
+            fire,
+            fire.chain,
+            new_losses,
+            following,
+            next_fuel,
+        )
+    message = message or f"split, fire and wall still moved after {settings.passes} passes"
+    return Coupled(solved, fire, walls, Convergence(False, float(change), passes, message))
+
+
+def _first_fire(
+    operating: Operating, hardware: Hardware, cold: AirSplit, settings: Settings
+) -> LinerGas:
+    total = cold.flow()
+    shares = {flow.name: flow.mass_flow / total for flow in cold.openings}
+    overall = operating.equivalence_ratio(operating.fuel_flow)
+    profile = liner_profile(
+        hardware, shares, overall, operating.products, settings.primary_jet_share
+    )
+    return profile.liner_gas(operating.fuel_flow)
+
+
+def _change(before: AirSplit, after: AirSplit) -> float:
+    total = before.flow()
+    return max(
+        abs(a.mass_flow - b.mass_flow) / total
+        for a, b in zip(before.openings, after.openings, strict=True)
+    )
+
+
+def _heat_moved(before: list[float], after: list[float]) -> float:
+    return float(np.abs(np.subtract(before, after)).sum())
+
+
+def _temperature_met(operating: Operating, fire: Fire, settings: Settings) -> bool:
+    if operating.exit_temperature is None:
+        return True
+    assert fire.exit is not None
+    miss = abs(fire.exit.temperature - operating.exit_temperature)
+    return miss < settings.temperature_tolerance
+
+
+def _next_fuel_flow(operating: Operating, gas: Gas, fire: Fire) -> float:
+    """Return the fuel flow that closes the gap to the exit temperature asked for."""
+    if operating.exit_temperature is None:
+        return fire.fuel_flow
+    assert fire.exit is not None
+    state = fire.exit
+    capacity = gas.heat_capacity(state.temperature, state.pressure, state.mass_fractions)
+    gap = (operating.exit_temperature - state.temperature) * capacity
+    warming = capacity * operating.exit_temperature
+    return fire.fuel_flow + fire.exit_flow * gap / (operating.lower_heating_value - warming)

@@ -1,0 +1,232 @@
+"""Judgements on a rated point: limits met, near or broken, and methods out of their range."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from combustor.base.finding import Finding, Level
+from combustor.base.method import Notice
+from combustor.case.schema import Case, Point
+from combustor.fuel.choose_mechanism import method_of
+from combustor.fuel.record import Fuel
+from combustor.rating.couple import Coupled
+from combustor.rating.record import PointRating
+from combustor.rating.settings import RECIRCULATION, UNMIXEDNESS, Settings
+from combustor.sizing.exit_pattern import JET_ROLES
+
+PRACTICE = "common practice, no source"
+
+LOSS_SLACK = 0.001  # of inlet pressure: what sizing itself promises
+WALL_MARGIN = 25.0  # K
+PATTERN_SLACK = 0.02
+EFFICIENCY = {"rated": 0.995, "part": 0.99, "idle": 0.98, "relight": 0.8}
+EMISSION_MARGIN = 0.85
+ANNULUS_MACH = 0.10
+
+
+def findings_of(
+    case: Case, point: Point, rated: PointRating, coupled: Coupled, fuel: Fuel, settings: Settings
+) -> tuple[Finding, ...]:
+    """Return every judgement on one point, the gravest first."""
+    if rated.status != "burning":
+        return (_no_result(rated, coupled),)
+    found = [
+        *_loss(case, point, rated),
+        *_wall(case, rated),
+        *_pattern(case, point, rated),
+        *_efficiency(point, rated),
+        *_emissions(case, rated),
+        *_jets(rated),
+        *_annulus(rated, coupled),
+        *_notices(rated, coupled, fuel, settings),
+    ]
+    order = {"act": 0, "watch": 1, "ok": 2}
+    return tuple(sorted(found, key=lambda finding: order[finding.level]))
+
+
+def _no_result(rated: PointRating, coupled: Coupled) -> Finding:
+    if rated.status == "blown_out":
+        return Finding(
+            "act",
+            "flame: blown out",
+            advice="No burning state of the primary zone exists here: give it more fuel, less "
+            "primary air or more volume, or a lower unmixedness if that is better known.",
+            source="burning branch followed from a long residence time",
+        )
+    return Finding(
+        "act",
+        "not converged",
+        advice=f"No number of this point is a result: {coupled.convergence.message}.",
+        source="coupled solve of air split, fire and wall",
+    )
+
+
+def _loss(case: Case, point: Point, rated: PointRating) -> Iterator[Finding]:
+    target, loss = case.targets.pressure_loss, rated.pressure_loss
+    if target is None or loss is None:
+        return
+    excess = loss - target
+    if point.name == case.targets.design_point:
+        level: Level = "act" if excess > LOSS_SLACK else "ok"
+        advice = ""
+        if level == "act":
+            area = 100.0 * ((loss / target) ** 0.5 - 1.0)
+            advice = f"Open about {area:.0f} % more effective hole area in all rows alike."
+        source = "target of the case at its design point"
+    else:
+        level = "watch" if excess > LOSS_SLACK else "ok"
+        advice = "Corrected flow is higher here than at the design point." if excess > 0 else ""
+        source = "target of the design point, for comparison"
+    yield Finding(level, "pressure loss", 100 * loss, 100 * target, "%", advice, source)
+
+
+def _wall(case: Case, rated: PointRating) -> Iterator[Finding]:
+    if not rated.walls:
+        return
+    limit = case.targets.wall_temperature
+    hottest = max(rated.walls, key=lambda wall: wall.temperature)
+    level: Level = "ok"
+    advice = ""
+    if hottest.temperature > limit:
+        level = "act"
+    elif hottest.temperature > limit - WALL_MARGIN:
+        level = "watch"
+    if level != "ok":
+        advice = (
+            f"Hottest at x = {1000 * hottest.station:.0f} mm ({hottest.side}): put a slot just "
+            "upstream of it or feed the one there with more air."
+        )
+    yield Finding(
+        level,
+        "peak wall temperature",
+        hottest.temperature,
+        limit,
+        "K",
+        advice,
+        "one-dimensional heat balance; target of the case",
+    )
+
+
+def _pattern(case: Case, point: Point, rated: PointRating) -> Iterator[Finding]:
+    value, target = rated.exit.pattern_factor, case.targets.pattern_factor
+    if value is None or point.kind != "rated":
+        return
+    level: Level = "ok"
+    advice = ""
+    if value > target:
+        level = "act" if value > target + PATTERN_SLACK else "watch"
+        advice = "A longer liner or more liner pressure loss evens the exit temperature out."
+    yield Finding(level, "pattern factor", value, target, "", advice, "Lefebvre 1984, from memory")
+
+
+def _efficiency(point: Point, rated: PointRating) -> Iterator[Finding]:
+    value, limit = rated.exit.combustion_efficiency, EFFICIENCY[point.kind]
+    if value is None:
+        return
+    level: Level = "ok" if value >= limit else "watch"
+    advice = "" if level == "ok" else "Less primary air, more volume or better mixing at this load."
+    yield Finding(level, "combustion efficiency", 100 * value, 100 * limit, "%", advice, PRACTICE)
+
+
+def _emissions(case: Case, rated: PointRating) -> Iterator[Finding]:
+    wanted, made = case.targets.emissions, rated.emissions
+    if made is None:
+        return
+    pairs = (("NOx", made.nox_dry_15, wanted.nox), ("CO", made.co_dry_15, wanted.co))
+    for name, value, limit in pairs:
+        if value is None:
+            yield Finding(
+                "watch",
+                f"{name} at 15 % O2: undefined",
+                advice="The exhaust is rich or has more than 20 % O2 dry: use the emission index.",
+                source="definition of the reference",
+            )
+        elif limit is not None:
+            level: Level = "ok" if value <= EMISSION_MARGIN * limit else "watch"
+            level = "act" if value > limit else level
+            advice = "" if level == "ok" else "See primary equivalence ratio and residence time."
+            yield Finding(
+                level,
+                f"{name} dry, 15 % O2",
+                1e6 * value,
+                1e6 * limit,
+                "ppm",
+                advice,
+                "target of the case",
+            )
+
+
+def _jets(rated: PointRating) -> Iterator[Finding]:
+    if rated.split is None or rated.hardware is None:
+        return
+    height = rated.hardware.liner_height
+    for jet in rated.split.openings:
+        if jet.role not in JET_ROLES or jet.penetration is None or jet.mass_flow <= 0.0:
+            continue
+        depth = jet.penetration / height
+        if depth > 0.5:
+            advice = "Jets overshoot the middle: more and smaller holes in this row."
+        elif depth < 0.2:
+            advice = "Jets stay near the wall: fewer and larger holes in this row."
+        else:
+            continue
+        yield Finding(
+            "watch",
+            f"penetration of {jet.name} over liner height",
+            depth,
+            0.33,
+            "",
+            advice,
+            PRACTICE,
+        )
+
+
+def _annulus(rated: PointRating, coupled: Coupled) -> Iterator[Finding]:
+    inlet = rated.inlet
+    sound = (1.38 * 287.0 * inlet.temperature) ** 0.5
+    for annulus in coupled.split.annuli:
+        fastest = float(abs(annulus.velocity).max())
+        if fastest / sound > ANNULUS_MACH:
+            yield Finding(
+                "watch",
+                f"velocity in the {annulus.side} annulus",
+                fastest,
+                ANNULUS_MACH * sound,
+                "m/s",
+                "Rows near its fast end flow less than their area says: widen the annulus.",
+                PRACTICE,
+            )
+
+
+def _notices(
+    rated: PointRating, coupled: Coupled, fuel: Fuel, settings: Settings
+) -> Iterator[Finding]:
+    notices: list[Notice] = [
+        *coupled.split.notices,
+        *coupled.fire.chain.notices,
+        *(notice for wall in coupled.walls for notice in wall.notices),
+        *UNMIXEDNESS.notices(unmixedness=settings.unmixedness),
+        *RECIRCULATION.notices(recirculation=settings.recirculation),
+        *_of_mechanism(rated, fuel),
+    ]
+    told = set()
+    for notice in notices:
+        if (notice.method, notice.quantity) in told:
+            continue
+        told.add((notice.method, notice.quantity))
+        yield Finding(
+            "watch",
+            f"{notice.quantity.replace('_', ' ')} outside the range of its method",
+            notice.value,
+            notice.high if notice.value > notice.high else notice.low,
+            "",
+            str(notice),
+            notice.method,
+        )
+
+
+def _of_mechanism(rated: PointRating, fuel: Fuel) -> tuple[Notice, ...]:
+    method = method_of(fuel.mechanism)
+    if "pressure" not in method.validity:
+        return ()
+    return method.notices(pressure=rated.inlet.pressure)

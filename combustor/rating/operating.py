@@ -1,0 +1,116 @@
+"""One operating point in the terms the physics needs: moist air, fuel, and what is asked."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from combustor.airflow.result import Inlet
+from combustor.case.schema import Case, Point
+from combustor.fuel.gas import Gas
+from combustor.fuel.record import Fuel
+from combustor.sizing.fire import HotGas, Supply, fuel_air_ratio_for, hot_gas
+
+
+@dataclass(frozen=True)
+class Operating:
+    """Air and fuel of one operating point.
+
+    Parameters
+    ----------
+    name, kind : str
+    inlet : Inlet
+    humidity : float
+        kg water per kg dry air.
+    air, fuel : ndarray
+        Mass fractions of moist air and of the fuel.
+    air_enthalpy : float
+        At the inlet temperature, J/kg.
+    fuel_enthalpy : float
+        At the fuel's temperature, J/kg.
+    fuel_flow : float
+        As stated, or that of complete combustion to the exit temperature, kg/s.
+    exit_temperature : float or None
+        Asked for, K; None where the fuel flow is stated.
+    lower_heating_value : float
+        What the flame releases, J/kg.
+    stoichiometric_fuel_air_ratio : float
+        Per dry air.
+    products : HotGas
+        Equilibrium products by equivalence ratio, the first guess of the fire.
+    """
+
+    name: str
+    kind: str
+    inlet: Inlet
+    humidity: float
+    air: NDArray[np.float64]
+    fuel: NDArray[np.float64]
+    air_enthalpy: float
+    fuel_enthalpy: float
+    fuel_flow: float
+    exit_temperature: float | None
+    lower_heating_value: float
+    stoichiometric_fuel_air_ratio: float
+    products: HotGas
+
+    @property
+    def dry_air_flow(self) -> float:
+        """Dry air, kg/s."""
+        return self.inlet.mass_flow / (1.0 + self.humidity)
+
+    def equivalence_ratio(self, fuel_flow: float, air_fraction: float = 1.0) -> float:
+        """Return the equivalence ratio of the fuel in a share of all air."""
+        fuel_air_ratio = fuel_flow / (self.dry_air_flow * air_fraction)
+        return fuel_air_ratio / self.stoichiometric_fuel_air_ratio
+
+
+def operating_of(case: Case, point: Point, fuel: Fuel, gas: Gas) -> Operating:
+    """Return one point of a case as air and fuel.
+
+    Raises
+    ------
+    InfeasibleError
+        The exit temperature asked for lies above what the fuel can give.
+    """
+    air = gas.air(point.humidity)
+    fuel_fractions = gas.fuel(fuel)
+    pressure, temperature = point.inlet_pressure, point.inlet_temperature
+    fuel_temperature = (
+        case.fuel.temperature if point.fuel_temperature is None else point.fuel_temperature
+    )
+    supply = Supply(pressure, temperature, point.humidity, fuel_temperature)
+    products = hot_gas(gas, fuel, supply)
+    dry_air_flow = point.air_flow / (1.0 + point.humidity)
+    if point.fuel_flow is not None:
+        fuel_flow = point.fuel_flow
+    elif point.fuel_air_ratio is not None:
+        fuel_flow = point.fuel_air_ratio * dry_air_flow
+    else:
+        assert point.exit_temperature is not None
+        fuel_flow = dry_air_flow * fuel_air_ratio_for(
+            gas, fuel, supply, point.exit_temperature, products
+        )
+    return Operating(
+        name=point.name,
+        kind=point.kind,
+        inlet=Inlet(
+            mass_flow=point.air_flow,
+            pressure=pressure,
+            temperature=temperature,
+            gas_constant=gas.gas_constant(air),
+            heat_capacity_ratio=gas.heat_capacity_ratio(temperature, pressure, air),
+        ),
+        humidity=point.humidity,
+        air=air,
+        fuel=fuel_fractions,
+        air_enthalpy=gas.enthalpy(temperature, pressure, air),
+        fuel_enthalpy=gas.enthalpy(fuel_temperature, pressure, fuel_fractions),
+        fuel_flow=fuel_flow,
+        exit_temperature=point.exit_temperature,
+        lower_heating_value=fuel.lower_heating_value,
+        stoichiometric_fuel_air_ratio=fuel.stoichiometric_fuel_air_ratio,
+        products=products,
+    )
