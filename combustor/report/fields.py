@@ -165,7 +165,7 @@ FLAME = (
     Field("mixture_temperature_K", "unburnt", "mixture_temperature", "K", 1.0, decimals=1),
     Field("pressure_Pa", "pressure", "pressure", "bar", 1.0, _BAR_PER_PA, decimals=3),
     Field("humidity_kg_kg", "humidity", "humidity", "kg/kg dry air", 1.0, decimals=5),
-    Field("residence_time_ms", "residence time", "residence_time", "ms", 1e3, figures=4),
+    Field("residence_time_ms", "residence time", "residence_time", "ms", 1e3, figures=3),
 )
 FLAME_TEMPERATURE = Field("temperature_K", "temper-\nature", "temperature", "K", 1.0, decimals=0)
 
