@@ -22,13 +22,13 @@ PRIMARY_JET_SHARE = Method(
 FILM_MIXING = Method(
     key="film-mixing",
     quantity="share of a film's air that has mixed with the core, by distance over slot height",
-    source="entrainment that reproduces the film law of Ballal & Lefebvre 1972-73 without "
-    "reaction: effectiveness = 1/(1 + E x/s)",
-    reading="derived",
+    source="what the film has lost of its effectiveness: 1 - 1.28 (mu ratio)^0.15 (t/s)^-0.2 "
+    "(x/s)^-0.2, Ballal & Lefebvre 1972-73, at viscosity ratio 0.53 and lip ratio 0.4",
+    reading="from memory",
     validity={"distance_over_height": (0.0, 150.0)},
-    note="E from effectiveness 0.8311 at x/s 13.33 and 0.7235 at 26.67: 0.0152 and 0.0143",
+    note="nothing has mixed while the film is whole, to 5.4 slot heights",
 )
-FILM_ENTRAINMENT = 0.0147
+FILM_DECAY = 1.28 * 0.53**0.15 * 0.4**-0.2
 
 FRONT_ROLES = ("swirler", "premixer", "dome")
 ROW_ROLES = ("primary", "secondary", "dilution")
@@ -83,8 +83,7 @@ def mixed_share(
         height = slot_height(hardware, opening)
         if height <= 0.0:
             return 1.0
-        entrained = FILM_ENTRAINMENT * distance / height
-        return entrained / (1.0 + entrained)
+        return max(0.0, 1.0 - FILM_DECAY * (distance / height) ** -0.2)
     if opening.role == "primary" and station <= _primary_end(hardware):
         return primary_jet_share
     if opening.role in FRONT_ROLES:

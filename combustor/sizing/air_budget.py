@@ -23,14 +23,14 @@ DOME_SHARES = Method(
 )
 SECONDARY_SHARE = Method(
     key="secondary-row-share",
-    quantity="least share of the air worth a secondary row",
-    source="a row of six holes or more that still reach the hot core",
+    quantity="share of the air for a secondary row",
+    source="5 % give six holes that still reach the hot core; below 2 % no row is worth drilling",
     reading="judgement",
 )
 
 PREFERRED_SWIRLER, HIGHEST_SWIRLER = 0.10, 0.12
 PREFERRED_DOME = 0.06
-LEAST_SECONDARY = 0.05
+USUAL_SECONDARY, LEAST_SECONDARY = 0.05, 0.02
 LEAST_PRIMARY_ROW = 0.04
 LEAST_DILUTION = 0.04
 
@@ -88,8 +88,8 @@ def budget(demand: BudgetDemand) -> AirBudget:
     """Return the shares of the air.
 
     Swirler and dome take their usual share and the secondary row closes the secondary zone's
-    balance. Where that leaves the row less than is worth drilling, it keeps the least share and
-    the front end takes over part of the primary row's air.
+    balance. Where that leaves the row less than its usual share, the front end takes over part
+    of the primary row's air, and the row makes do with what that still leaves it.
 
     Parameters
     ----------
@@ -120,7 +120,7 @@ def budget(demand: BudgetDemand) -> AirBudget:
                 "swirler, dome, primary and secondary rows",
                 f"with {_percent(demand.film)} film air and {_percent(demand.leak)} leakage "
                 f"{_percent(used)} of the air is spoken for",
-                f"{_percent(dilution)} is left for dilution where {_percent(LEAST_DILUTION)} is "
+                f"{_left(dilution)} is left for dilution where {_percent(LEAST_DILUTION)} is "
                 "the least that still shapes the exit",
             ),
             "Raise the zone equivalence ratios, raise wall_temperature (less film air), or "
@@ -169,9 +169,8 @@ def _front_and_secondary(
     rest = secondary_air - demand.film_mixed
     secondary = rest - front - (primary_air - front) / share
     is_free = demand.swirler is None or demand.dome is None
-    if secondary < LEAST_SECONDARY and share < 1.0 and is_free:
-        secondary = LEAST_SECONDARY
-        needed = (primary_air / share + secondary - rest) / (1.0 / share - 1.0)
+    if secondary < USUAL_SECONDARY and share < 1.0 and is_free:
+        needed = (primary_air / share + USUAL_SECONDARY - rest) / (1.0 / share - 1.0)
         # a front end of all the primary air leaves the secondary row what is over
         front = max(front, min(needed, most))
         secondary = rest - front - (primary_air - front) / share
@@ -184,7 +183,7 @@ def _front_and_secondary(
                 f"of the {_percent(secondary_air - primary_air)} between them the film gives "
                 f"{_percent(demand.film_mixed)} and the primary row's downstream part "
                 f"{_percent((primary_air - front) * (1.0 / share - 1.0))}",
-                f"{_percent(secondary)} is left for the secondary row where "
+                f"{_left(secondary)} is left for the secondary row where "
                 f"{_percent(LEAST_SECONDARY)} is the least worth drilling",
             ),
             "Lower equivalence_ratio.secondary, raise equivalence_ratio.primary, allow less "
@@ -226,3 +225,7 @@ def _swirler_and_dome(demand: BudgetDemand, front: float) -> tuple[float, float]
 
 def _percent(share: float) -> str:
     return f"{100.0 * share:.1f} %"
+
+
+def _left(share: float) -> str:
+    return _percent(share) if share > 0.0 else "nothing"

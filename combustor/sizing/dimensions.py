@@ -193,14 +193,14 @@ def _budget(task: Task, state: State) -> Iterator[Dimension]:
         shares.swirler,
         "fraction",
         AIR_BUDGET if targets.swirler_air is None else stated,
-        Candidate(PREFERRED_SWIRLER, DOME_SHARES, "would miss the zone equivalence ratios"),
+        _usual(shares.swirler, PREFERRED_SWIRLER),
     )
     yield Dimension(
         "dome air",
         shares.dome,
         "fraction",
         AIR_BUDGET if targets.dome_air is None else stated,
-        Candidate(PREFERRED_DOME, DOME_SHARES, "would miss the zone equivalence ratios"),
+        _usual(shares.dome, PREFERRED_DOME),
     )
     turned = f"{task.case.model.primary_jet_share:.0%} of it turns upstream"
     yield Dimension("primary row air", shares.primary, "fraction", PRIMARY_JET_SHARE, None, turned)
@@ -214,6 +214,12 @@ def _budget(task: Task, state: State) -> Iterator[Dimension]:
         Candidate(cooling.USUAL_FILM_AIR, cooling.FILM_AIR_SHARE, "a range, blind to the duty"),
     )
     yield Dimension("leakage", shares.leak, "fraction", stated)
+
+
+def _usual(share: float, usual: float) -> Candidate | None:
+    if abs(share - usual) < 1e-9:
+        return None
+    return Candidate(usual, DOME_SHARES, "usual, but would miss the zone equivalence ratios")
 
 
 def _swirler(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:

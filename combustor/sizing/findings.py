@@ -157,20 +157,33 @@ def _wall(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
         else "closer or higher slots, a coating, more film_air, or a higher wall_temperature",
         cooling.FILM_AIR.citation,
     )
+    yield from _metering(rounded)
+
+
+def _metering(rounded: Rounded) -> Iterator[Finding]:
     low, high = cooling.METERING_HOLES.validity["pitch_over_diameter"]
-    perimeter = rounded.sketch.perimeter
+    pitches = {}
     for ring in rounded.sketch.slots:
         opening = rounded.hardware.opening(ring.name)
         assert opening.diameter is not None
-        pitch = rows.pitch_over_diameter(perimeter, opening.count, opening.diameter)
-        if not low <= pitch <= high:
+        pitches[ring.name] = rows.pitch_over_diameter(
+            rounded.sketch.perimeter, opening.count, opening.diameter
+        )
+    for limit, name in (
+        (high, max(pitches, key=lambda name: pitches[name])),
+        (low, min(pitches, key=lambda name: pitches[name])),
+    ):
+        is_sparse = limit == high
+        if (pitches[name] > high) if is_sparse else (pitches[name] < low):
+            count = sum(not low <= pitch <= high for pitch in pitches.values())
             yield Finding(
                 "watch",
-                f"metering holes of {ring.name}, pitch over diameter",
-                pitch,
-                high if pitch > high else low,
+                f"pitch over diameter of metering holes, worst at {name}",
+                pitches[name],
+                limit,
                 "-",
-                "more film air or a lower slot" if pitch > high else "a higher slot",
+                ("more film_air or a lower slot_height" if is_sparse else "a higher slot_height")
+                + f"; {count} of {len(pitches)} slots lie outside",
                 cooling.METERING_HOLES.citation,
             )
 

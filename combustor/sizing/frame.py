@@ -229,13 +229,7 @@ def _liner_ratio(
         (builder.case.targets.pressure_loss or 0.0) / head,
     )
     ratio, method, rival, note = optimum.value, ratios.OPTIMUM_RATIO, simple, optimum.bounded
-    wide = ratios.ratio_for_annulus_velocity(
-        highest_annulus_velocity(builder.duty, targets),
-        (1.0 - front_share) * builder.duty.inlet.mass_flow,
-        builder.duty.density,
-        builder.casing.area,
-    )
-    wide = max(wide, ratios.LOWEST_RATIO)
+    wide = max(_ratio_by_annulus(builder, front_share), ratios.LOWEST_RATIO)
     if wide < ratio or targets.annulus_velocity is not None:
         rival = Candidate(ratio, method, "the annulus would be too fast")
         ratio, method = wide, ratios.ANNULUS_VELOCITY
@@ -249,6 +243,22 @@ def _liner_ratio(
             f"{1e3 * builder.room(builder.section.height(ratio * builder.casing.area)):.0f} mm"
         )
     return ratio, method, rival, note
+
+
+def _ratio_by_annulus(builder: _Builder, front_share: float) -> float:
+    """Return the liner ratio that leaves the annulus its velocity beside the liner's sheet."""
+    section, casing = builder.section, builder.casing
+    outside = ratios.ratio_for_annulus_velocity(
+        highest_annulus_velocity(builder.duty, builder.case.targets),
+        (1.0 - front_share) * builder.duty.inlet.mass_flow,
+        builder.duty.density,
+        casing.area,
+    )
+    if outside <= 0.0:
+        return 0.0
+    sheet = 2.0 * builder.case.targets.sheet_thickness
+    height = section.height(outside * casing.area) - sheet
+    return section.area(max(height, 0.0)) / casing.area
 
 
 def _longest_fit(builder: _Builder, ratio: float) -> float:

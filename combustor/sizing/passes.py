@@ -127,7 +127,7 @@ def next_state(task: Task, state: State, frozen: bool) -> State:
         )
         sketch = _sketch(task, frame, state.plans, state.sketch.slots)
     shares = shares_by_opening(state.budget, sketch, state.films)
-    flux = _metering_flux(task, state.loss)
+    flux = _metering_flux(task, state)
     sketch, plan = _cool(task, sketch, state.plans, shares, flux, state.films if frozen else None)
     films = _held_to_stated(task, plan.flow)
     share_out = _budget(task, sketch, films)
@@ -302,9 +302,14 @@ def _cool(
     return cooling.lay_slots(sketch, bands, room, wall, gas, air, inlet, wanted, flux)
 
 
-def _metering_flux(task: Task, loss: LossShares) -> float:
-    drop = loss.jets * task.duty.inlet.pressure
-    return METERING_STATIC * math.sqrt(2.0 * task.duty.density * drop)
+def _metering_flux(task: Task, state: State) -> float:
+    """Return the most air that metering holes pass by area, whatever the slot [kg/(s m2)]."""
+    if state.fit is None:
+        drop = state.loss.jets * task.duty.inlet.pressure
+        return METERING_STATIC * math.sqrt(2.0 * task.duty.density * drop)
+    solved, areas = state.fit.split, state.fit.areas
+    films = [flow for flow in solved.openings if flow.role == "film"]
+    return max(flow.mass_flow / (areas[flow.name] * task.section.cans) for flow in films)
 
 
 def _held_to_stated(task: Task, flow: tuple[float, ...]) -> tuple[float, ...]:
