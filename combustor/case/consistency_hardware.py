@@ -39,6 +39,7 @@ def _passages(hardware: Row, report: Reporter) -> Iterator[Problem]:
     liner = table(hardware, "liner")
     if liner is not None:
         yield from _passage(("hardware", "liner"), liner, report)
+        yield from _duct(hardware, liner, report)
     for index, annulus in tables(hardware, "annuli"):
         yield from _passage(("hardware", "annuli", index), annulus, report)
     for index, wall in tables(hardware, "walls"):
@@ -59,6 +60,19 @@ def _passage(path: Path, passage: Row, report: Reporter) -> Iterator[Problem]:
     yield from _stations(path, passage, forms[0], report)
     if forms[0] == PASSAGE_FORMS[1]:
         yield from _rings(path, passage, report)
+
+
+def _duct(hardware: Row, liner: Row, report: Reporter) -> Iterator[Problem]:
+    length = number(hardware, "liner_length", k.LENGTH)
+    stations = [number({"x": x}, "x", k.STATION) for x in as_list(liner.get("station"))]
+    if liner.get("runs_to_exit") is not True or length is None:
+        return
+    if any(x is not None and x >= length for x in stations):
+        yield report.problem(
+            ("hardware", "liner", "station"),
+            "a station in the transition duct",
+            "with runs_to_exit the liner is stated up to liner_length, the duct follows",
+        )
 
 
 def _rings(path: Path, passage: Row, report: Reporter) -> Iterator[Problem]:

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from typing import Literal
 
-from pydantic import BaseModel, ConfigDict, Field
+from pydantic import BaseModel, ConfigDict, Field, StrictBool
 
 from combustor.case import kinds as k
 
@@ -39,6 +39,12 @@ class PassageTable(Table):
     inner_diameter: k.InnerDiameters | None = None
     area: k.Areas | None = None
     hydraulic_diameter: k.Diameters | None = None
+
+
+class LinerTable(PassageTable):
+    """The hot-gas passage; ``runs_to_exit`` carries it on through the transition duct."""
+
+    runs_to_exit: StrictBool = False
 
 
 class AnnulusTable(PassageTable):
@@ -143,7 +149,7 @@ class HardwareTable(Table):
     exit_area: k.Area | None = None
     transition_length: k.DuctLength | None = None
     roughness: k.Roughness = 1.5e-6
-    liner: PassageTable
+    liner: LinerTable
     annuli: tuple[AnnulusTable, ...] = Field(min_length=1, max_length=2)
     walls: tuple[WallTable, ...] = Field(min_length=1, max_length=2)
     diffuser: DiffuserTable

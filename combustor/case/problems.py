@@ -167,6 +167,8 @@ def _plain(kind: str, path: Path, value: object, context: Mapping[str, Any]) -> 
         if isinstance(value, list):
             return ("a list where one table is needed", f"write [{key_text(path)}]")
         return ("not a table", f"write [{key_text(path)}] or {{ ... }}", value)
+    if kind == "bool_type":
+        return ("neither true nor false", "write true or false", value)
     if kind == "too_short":
         return ("empty list", f"at least {context.get('min_length', 1)} needed")
     if kind == "too_long":

@@ -1,4 +1,4 @@
-"""SI numbers as a person writes them, reading back to the last bit."""
+"""SI numbers as a person writes them, reading back to the last few bits."""
 
 from __future__ import annotations
 
@@ -9,15 +9,28 @@ from combustor.case.kinds import VANE_ANGLE
 
 _SHIFT = {"m": 0, "mm": 3, "um": 6, "m2": 0, "mm2": 6}
 
+NOISE = 2e-15
+"""Relative difference that arithmetic leaves behind: 31.499999999999986 mm is 31.5 mm."""
+
 
 def bare(value: float) -> float | int:
     """Return a number as it is written without unit: 1 rather than 1.0."""
-    return int(value) if float(value).is_integer() and abs(value) < 1e15 else float(value)
+    value = neat(float(value))
+    return int(value) if float(value).is_integer() and abs(value) < 1e15 else value
+
+
+def neat(value: float) -> float:
+    """Return ``value`` without the noise of arithmetic in its last digits."""
+    for digits in range(12, 16):
+        short = float(f"{value:.{digits}g}")
+        if abs(short - value) <= NOISE * abs(value):
+            return short
+    return value
 
 
 def _shifted(value: float, unit: str) -> str:
     # a shift of the decimal point is exact, where a product of floats is not
-    text = format(Decimal(repr(float(value))).scaleb(_SHIFT[unit]), "f")
+    text = format(Decimal(repr(neat(float(value)))).scaleb(_SHIFT[unit]), "f")
     if "." in text:
         text = text.rstrip("0").rstrip(".")
     return f"{text} {unit}"

@@ -216,7 +216,7 @@ def _same(current: Any, value: Any) -> bool:
 
 
 def _item(value: Any, inside: bool = False) -> Any:
-    """Return a tomlkit item: tables and rows as blocks, small tables within a row inline."""
+    """Return a tomlkit item: tables and rows as blocks, small tables on one line."""
     import tomlkit
 
     if isinstance(value, Mapping):
@@ -238,8 +238,13 @@ def _row(row: Mapping[str, Any]) -> Any:
     import tomlkit
 
     table = tomlkit.table()
+    # a block below a row ends the row: plain values first
+    blocks = {k: v for k, v in row.items() if isinstance(v, Mapping) and not _is_small(v)}
     for key, item in row.items():
-        table.add(str(key), _item(item, inside=True))
+        if key not in blocks:
+            table.add(str(key), _item(item, inside=True))
+    for key, item in blocks.items():
+        table.add(str(key), _item(item))
     return table
 
 

@@ -10,7 +10,7 @@ import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from combustor.hardware.metal import Edge, Feed, Layout, Role, Side, Swirler
+from combustor.hardware.metal import AxialProfile, Edge, Feed, Layout, Role, Side, Swirler
 
 QUARTER_PI = math.pi / 4.0
 
@@ -78,6 +78,23 @@ def liner_height(layout: Layout, liner: Ring) -> float:
     if layout == "annular":
         return max((o - i) / 2.0 for o, i in zip(liner.outer, liner.inner, strict=True))
     return max(liner.outer)
+
+
+def with_duct(
+    area: AxialProfile, liner_length: float, transition_length: float, exit_area: float
+) -> AxialProfile:
+    """Return the liner area carried on through the transition duct to the exit, m2.
+
+    Stations are those inside ``liner_length``, its end and the end of the duct; without a
+    duct the area is returned as it is.
+    """
+    if transition_length <= 0.0:
+        return area
+    inside = [(x, a) for x, a in zip(area.station, area.value, strict=True) if x < liner_length]
+    end = (liner_length, float(area.at(liner_length)))
+    duct = (liner_length + transition_length, exit_area)
+    stations, values = zip(*inside, end, duct, strict=True)
+    return AxialProfile(stations, values)
 
 
 def reference_area(layout: Layout, cans: int, annuli: Sequence[Ring]) -> float:

@@ -54,6 +54,11 @@ def _build(combustor: Combustor, table: t.HardwareTable) -> Hardware:
         for index, wall in enumerate(table.walls)
     )
     openings = sorted((_opening(row, walls) for row in table.openings), key=lambda o: o.station)
+    transition, exit_area = _transition(combustor, table), table.exit_area or _exit_area(combustor)
+    liner = _passage(table.liner, "liner")
+    if table.liner.runs_to_exit:
+        end = derived.with_duct(liner.area, table.liner_length, transition, exit_area)
+        liner = Passage("liner", end, liner.hydraulic_diameter)
     return Hardware(
         layout=combustor.layout,
         cans=combustor.cans,
@@ -61,10 +66,10 @@ def _build(combustor: Combustor, table: t.HardwareTable) -> Hardware:
         reference_area=table.reference_area or _reference_area(combustor, annulus_rings),
         reference_height=table.reference_height or _reference_height(combustor, annulus_rings),
         liner_height=height,
-        liner=_passage(table.liner, "liner"),
+        liner=liner,
         liner_length=table.liner_length,
-        transition_length=_transition(combustor, table),
-        exit_area=table.exit_area or _exit_area(combustor),
+        transition_length=transition,
+        exit_area=exit_area,
         annuli=tuple(_passage(annulus, annulus.side) for annulus in table.annuli),
         walls=walls,
         diffuser=_diffuser(combustor, table.diffuser),

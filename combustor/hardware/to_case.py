@@ -43,7 +43,8 @@ def table_of(hardware: Hardware, combustor: Combustor | None = None) -> Table:
     ValueError
         An opening whose diameter and area contradict each other.
     """
-    liner = _ring_of(hardware.liner, hardware.layout)
+    liner_passage, runs_to_exit = _without_duct(hardware)
+    liner = _ring_of(liner_passage, hardware.layout)
     annuli = [_ring_of(annulus, hardware.layout) for annulus in hardware.annuli]
     table: Table = {"liner_length": length(hardware.liner_length)}
     table |= _overall(hardware, combustor, liner, annuli)
@@ -53,7 +54,9 @@ def table_of(hardware: Hardware, combustor: Combustor | None = None) -> Table:
         "secondary_end": length(hardware.zones[1].end),
     }
     table["diffuser"] = _diffuser(hardware.diffuser, combustor)
-    table["liner"] = _passage(hardware.liner, liner)
+    table["liner"] = _passage(liner_passage, liner)
+    if runs_to_exit:
+        table["liner"]["runs_to_exit"] = True
     table["annuli"] = [
         {"side": passage.side} | _passage(passage, ring)
         for passage, ring in zip(hardware.annuli, annuli, strict=True)
@@ -99,6 +102,24 @@ def _overall(
     if combustor is None or combustor.transition_length != hardware.transition_length:
         table["transition_length"] = length(hardware.transition_length)
     return table
+
+
+def _without_duct(hardware: Hardware) -> tuple[Passage, bool]:
+    """Return the liner without its run through the transition duct, and whether it had one."""
+    liner, length = hardware.liner, hardware.liner_length
+    kept = [(x, a) for x, a in zip(liner.area.station, liner.area.value, strict=True) if x < length]
+    if not kept or len(kept) == len(liner.area.station):
+        return liner, False
+    stations, values = zip(*kept, strict=True)
+    inside = AxialProfile(stations, values)
+    again = derived.with_duct(inside, length, hardware.transition_length, hardware.exit_area)
+    same = len(again.station) == len(liner.area.station) and all(
+        math.isclose(a, b, rel_tol=_SAME)
+        for a, b in zip(
+            (*again.station, *again.value), (*liner.area.station, *liner.area.value), strict=True
+        )
+    )
+    return (Passage("liner", inside, liner.hydraulic_diameter), True) if same else (liner, False)
 
 
 def _casing(

@@ -2,6 +2,7 @@
 
 import dataclasses
 import math
+from pathlib import Path
 from typing import Any
 
 import pytest
@@ -164,6 +165,19 @@ def test_one_edited_diameter_moves_its_area_alone() -> None:
     assert dataclasses.replace(after, openings=before.openings) == before
 
 
+def test_a_liner_that_runs_to_the_exit_tapers_through_the_duct() -> None:
+    text = (head(envelope='casing_diameter = "440 mm"') + CAN).replace(
+        'liner = { diameter = "372 mm" }', 'liner = { diameter = "372 mm", runs_to_exit = true }'
+    )
+    metal = hardware_of(loads_case(text))
+    assert metal.liner.area.station == (0.0, 0.9, 1.15)
+    full = math.pi / 4 * 0.372**2
+    # half-way through the duct the area is the mean of both its ends
+    assert float(metal.liner.area.at(1.025)) == pytest.approx((full + metal.exit_area) / 2)
+    assert metal.liner.hydraulic_diameter == AxialProfile.constant(0.372)
+    assert table_of(metal)["liner"] == {"diameter": "372 mm", "runs_to_exit": True}
+
+
 def test_a_case_without_metal_says_what_to_do() -> None:
     envelope = 'casing_diameter = "440 mm"\ncasing_length = "1150 mm"'
     case = loads_case(head(envelope=envelope) + '[targets]\npressure_loss = "4.5 %"\n')
@@ -256,6 +270,11 @@ def cans(draw: st.DrawFn) -> tuple[Hardware, str]:
     stations = draw(st.sampled_from([(0.0,), (0.0, 0.3 * length), (0.01, 0.2, 0.7)]))
     diameters = tuple(liner * (1 - 0.1 * i) for i in range(len(stations)))
     tapered = AxialProfile(stations, tuple(math.pi / 4 * d**2 for d in diameters))
+    transition, exit_area = draw(st.sampled_from([0.0, 0.25, 0.1 + 0.2])), draw(st.floats(1e-3, 1))
+    if transition and stations[-1] < length and draw(st.booleans()):
+        tapered = AxialProfile(
+            (*stations, length, length + transition), (*tapered.value, tapered.value[-1], exit_area)
+        )
     annulus = Passage("outer", CONST(math.pi / 4 * (casing**2 - inner**2)), CONST(casing - inner))
     hole = draw(st.floats(1e-3, 0.1))
     hub, tip = sorted((0.2 * liner * draw(FRACTION), 0.3 * liner))
@@ -271,8 +290,8 @@ def cans(draw: st.DrawFn) -> tuple[Hardware, str]:
         liner_height=draw(st.sampled_from([liner, 0.1234567])),
         liner=Passage("liner", tapered, AxialProfile(stations, diameters)),
         liner_length=length,
-        transition_length=draw(st.sampled_from([0.0, 0.25, 0.1 + 0.2])),
-        exit_area=draw(st.floats(1e-3, 1.0)),
+        transition_length=transition,
+        exit_area=exit_area,
         annuli=(annulus,),
         walls=(
             LinerWall(
@@ -382,3 +401,13 @@ def test_an_annular_liner_survives_the_case_file(
     envelope = 'casing_outer_diameter = "1.5 m"\ncasing_inner_diameter = "0.2 m"'
     text = complete(head("annular", envelope=envelope), table)
     assert_same(metal, hardware_of(loads_case(text)), "hardware")
+
+
+def test_sized_metal_survives_its_own_case_file() -> None:
+    import combustor
+
+    case = combustor.load_case(Path(__file__).parents[2] / "demo" / "industrial_can.toml")
+    metal = combustor.size(case).hardware
+    text = complete(case.text, table_of(metal, case.combustor))
+    assert_same(metal, hardware_of(loads_case(text)), "hardware")
+    assert text.startswith(case.text)
