@@ -10,7 +10,7 @@ from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from combustor.api import find_fuel, flame, fuel_of, rate, size
+    from combustor.api import find_fuel, flame, rate, size
     from combustor.base.errors import (
         CombustorError,
         InfeasibleError,
@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     )
     from combustor.case import Case, load_case
     from combustor.case.write import write_case
+    from combustor.fuel.of_case import fuel_of
     from combustor.fuel.record import Fuel
     from combustor.rating.record import PointRating, Ratings
     from combustor.report.frame import frame
@@ -39,7 +40,7 @@ _HOMES = {
     "find_fuel": "combustor.api",
     "flame": "combustor.api",
     "frame": "combustor.report.frame",
-    "fuel_of": "combustor.api",
+    "fuel_of": "combustor.fuel.of_case",
     "load_case": "combustor.case",
     "rate": "combustor.api",
     "size": "combustor.api",

@@ -13,15 +13,6 @@ if TYPE_CHECKING:
     from combustor.studies.flame import Flame
 
 
-def fuel_of(case: Case) -> Fuel:
-    """Return the fuel a case states, under the mechanism it states or the tool's choice."""
-    from combustor.fuel import catalogue
-
-    if case.fuel.name is not None:
-        return catalogue.find(case.fuel.name, case.model.mechanism)
-    return catalogue.from_composition(case.fuel.composition or {}, case.model.mechanism)
-
-
 def find_fuel(name: str, mechanism: str | None = None) -> Fuel:
     """Return a fuel by catalogue name or blend, e.g. ``"natural-gas+30%hydrogen"``."""
     from combustor.fuel import catalogue
@@ -38,6 +29,7 @@ def size(case: Case) -> Design:
         When no metal meets the targets; carries the chain of causes.
     """
     from combustor.fuel.gas import Gas
+    from combustor.fuel.of_case import fuel_of
     from combustor.sizing.size import size as size_case
 
     fuel = fuel_of(case)

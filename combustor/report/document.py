@@ -47,6 +47,8 @@ class Table:
     marks : mapping of int to str
         A word of the theme by record index: the line is set off in that colour. Whatever
         it means is said in the line's words as well.
+    below : tuple of str
+        A remark under each line, set across the width; empty where there is none.
     lead : int
         How many first columns name the line and are repeated when a narrow terminal
         needs the table in two parts.
@@ -57,6 +59,7 @@ class Table:
     fields: tuple[Field, ...]
     records: tuple[Any, ...]
     marks: Mapping[int, str] = field(default_factory=dict)
+    below: tuple[str, ...] = ()
     lead: int = 1
 
     def values(self) -> Iterable[dict[str, Any]]:

@@ -34,6 +34,8 @@ class Field:
         Fixed decimals on the terminal.
     figures : int or None
         Significant figures on the terminal, where values span decades.
+    lines : bool
+        Whether the value is text that may hold several lines.
     """
 
     key: str
@@ -44,6 +46,7 @@ class Field:
     shown: float = 1.0
     decimals: int | None = None
     figures: int | None = None
+    lines: bool = False
 
     def value(self, record: Any) -> Any:
         """Return the plain value in the key's unit; None where it is not a result."""
@@ -57,6 +60,8 @@ class Field:
         found = self.value(record)
         if isinstance(found, float):
             return number_text(found * self.shown, self.decimals, self.figures)
+        if self.lines and isinstance(found, str):
+            return "\n".join(printable(line) for line in found.split("\n"))
         return value_text(found)
 
     def with_unit(self, record: Any) -> str:

@@ -44,7 +44,7 @@ EXIT = (
         "%",
         1.0,
         100.0,
-        decimals=2,
+        decimals=3,
     ),
     Field("pattern_factor", "pattern\nfactor", "exit.pattern_factor", "-", 1.0, decimals=3),
 )

@@ -66,7 +66,8 @@ def fit(table: Table, width: int) -> tuple[Part, ...]:
 
 
 def _column(heading: tuple[str, ...], cells: tuple[str, ...], numeric: bool) -> Column:
-    natural = max(cell_len(text) for text in (*heading, *cells))
+    lines = [line for text in (*heading, *cells) for line in text.split("\n")]
+    natural = max(map(cell_len, lines))
     words = [word for text in (*heading, *cells) for word in text.split()]
     longest = max((cell_len(word) for word in words), default=1)
     least = natural if numeric else min(longest, LONGEST_UNBROKEN_WORD, natural)

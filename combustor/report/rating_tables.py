@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+from combustor.base.convergence import Convergence
 from combustor.base.finding import Finding
+from combustor.emissions.exhaust import Emissions
 from combustor.rating.record import PointRating, Ratings
 from combustor.report import fields, theme
 from combustor.report.cautions import cautions
 from combustor.report.document import Block, Facts, Heading, Prose, Table
-from combustor.report.field import MISSING, Field, select
+from combustor.report.field import Field, select
 from combustor.report.rating_rows import (
     finding_rows,
     level_of,
@@ -41,6 +43,10 @@ _SPECIES = (
     ("N2O", {"ppm": "n2o_ppmvd_15"}),
     ("NH3", {"ppm": "nh3_ppmvd_15"}),
 )
+
+
+# Ammonia has its line where there is some: mole fraction, dry, 15 % O2.
+LEAST_AMMONIA = 1e-8
 
 
 def rating_report(ratings: Ratings) -> tuple[Block, ...]:
@@ -101,9 +107,9 @@ def point_blocks(point: PointRating) -> list[Block]:
     if point.walls:
         blocks.append(walls_table(point))
     if point.emissions is not None:
-        blocks.append(emissions_table(point))
+        blocks.append(emissions_table(point.emissions))
         blocks.append(Facts((("exhaust", _joined(_exhaust_fields(), point.emissions)),)))
-    if point.operability:
+    if any(value is not None for value in point.operability.values()):
         blocks.append(operability_table(point))
     return blocks
 
@@ -123,13 +129,13 @@ def walls_table(point: PointRating) -> Table:
     return Table("walls", "Wall", columns, records, marks)
 
 
-def emissions_table(point: PointRating) -> Table:
+def emissions_table(emissions: Emissions) -> Table:
     """Return the emissions on every basis, one line a species."""
     known = {field.key: field for field in fields.EMISSIONS}
     records = []
     for species, bases in _SPECIES:
-        texts = {basis: known[key].text(point.emissions) for basis, key in bases.items()}
-        if species != "NH3" or texts["ppm"] != MISSING:
+        texts = {basis: known[key].text(emissions) for basis, key in bases.items()}
+        if species != "NH3" or (emissions.nh3_dry_15 or 0.0) >= LEAST_AMMONIA:
             records.append({"species": species, **texts})
     columns = (Field("species", "species"), *_BASES)
     return Table("emissions", "Emissions", columns, tuple(records))
@@ -157,10 +163,8 @@ def findings_table(found: list[tuple[str, Finding]]) -> Block:
     rows = finding_rows(found)
     if not rows:
         return Prose("Findings: none.")
-    records = tuple(
-        {"row": row, "verdict": theme.verdict(row.level), "advice": _advice(row.advice, row.source)}
-        for row in rows
-    )
+    records = tuple({"row": row, "verdict": theme.verdict(row.level)} for row in rows)
+    below = tuple(_advice(row.advice, row.source) for row in rows)
     points = (Field("points", "point").beneath("row"),) if any(row.points for row in rows) else ()
     columns = (
         _VERDICT,
@@ -169,15 +173,23 @@ def findings_table(found: list[tuple[str, Finding]]) -> Block:
             field.beneath("row")
             for field in select(fields.FINDINGS, "what", "value", "limit", "unit")
         ),
-        Field("advice", "advice (ground)"),
     )
     marks = {i: row.level for i, row in enumerate(rows) if row.level != "ok"}
-    return Table("findings", "Findings", columns, records, marks, lead=1 + len(points))
+    return Table("findings", "Findings", columns, records, marks, below, lead=1 + len(points))
 
 
 def _all_findings(ratings: Ratings) -> list[tuple[str, Finding]]:
     general = [("case", finding) for finding in ratings.findings]
     return general + [(point.name, f) for point in ratings.points for f in point.findings]
+
+
+def solve_words(convergence: Convergence) -> str:
+    """Return in words how an iterative solve ended."""
+    done = "converged" if convergence.converged else "! not converged"
+    count = convergence.iterations
+    words = f"{done} in {count} {'pass' if count == 1 else 'passes'}"
+    words += f", residual {convergence.residual:.1e}"
+    return f"{words}: {convergence.message}" if convergence.message else words
 
 
 def _facts(point: PointRating) -> list[tuple[str, str]]:
@@ -194,15 +206,7 @@ def _facts(point: PointRating) -> list[tuple[str, str]]:
     if point.balances is not None:
         facts.append(("imbalance", _joined(fields.BALANCES, point.balances)))
     if point.convergence is not None:
-        done = "converged" if point.convergence.converged else "! not converged"
-        facts.append(
-            (
-                "solve",
-                f"{done} in {point.convergence.iterations} passes, residual "
-                f"{point.convergence.residual:.1e}"
-                + (f": {point.convergence.message}" if point.convergence.message else ""),
-            )
-        )
+        facts.append(("solve", solve_words(point.convergence)))
     return facts
 
 

@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import Any
 
-from combustor.base.method import Method
 from combustor.case.schema import Case
 from combustor.report import fields
 from combustor.report.cautions import cautions
@@ -13,22 +12,22 @@ from combustor.report.document import Block, Facts, Heading, Prose, Table
 from combustor.report.field import Field, row, select
 from combustor.report.json_out import findings_list
 from combustor.report.rating_rows import SplitRow, rows_of_split
-from combustor.report.rating_tables import findings_table
+from combustor.report.rating_tables import findings_table, solve_words
 from combustor.sizing.record import Design, Dimension
 
 
 def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> tuple[Block, ...]:
     """Return the whole report of a sized case."""
-    done = "converged" if design.converged else "! not converged"
     facts = (
         ("pressure loss", _loss_words(design)),
         ("fuel flow", f"{design.fuel_flow:.4f} kg/s at the design point"),
-        ("solve", f"{done} in {design.convergence.iterations} passes"),
+        ("solve", solve_words(design.convergence)),
     )
     return (
         Heading(f"{case.title}: sized" if case.title else "Sized"),
         Facts(facts),
         dimensions_table(design),
+        methods_table(design),
         Table("zones", "Zones at the design point", fields.ZONE_TARGETS, design.zones),
         Table("split", "Air split at the design point", fields.SPLIT, _split(design, case)),
         findings_table([("", finding) for finding in design.findings]),
@@ -38,13 +37,13 @@ def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> t
 
 
 def dimensions_table(design: Design) -> Table:
-    """Return one line a dimension: value, method and source, and what lost to it."""
+    """Return one line a dimension: value, method by name and number, and what lost to it."""
+    number = _numbers(design)
     records = tuple(
         {
             "line": dimension_values(dimension),
             "text": _value_text(dimension, dimension.value),
-            "method": _method_words(dimension.method, dimension.note),
-            "rival": _rival_words(dimension),
+            "method": _method_words(dimension, number) + _rival_words(dimension, number),
         }
         for dimension in design.dimensions
     )
@@ -53,10 +52,24 @@ def dimensions_table(design: Design) -> Table:
         name.beneath("line"),
         Field("text", value.label, figures=4),
         unit.beneath("line"),
-        Field("method", "method (source; where it was read)"),
-        Field("rival", "rival that lost"),
+        Field("method", "method [number]; remark. What lost to it, and why", lines=True),
     )
     return Table("dimensions", "Dimensions", columns, records)
+
+
+def methods_table(design: Design) -> Table:
+    """Return the numbered methods: what each gives, its source, where that was read."""
+    records = tuple(
+        {"number": f"[{number}]", "method": method}
+        for number, method in enumerate(design.methods, start=1)
+    )
+    columns = (
+        Field("number", "no."),
+        Field("quantity", "method").beneath("method"),
+        Field("source", "source").beneath("method"),
+        Field("reading", "where it was read").beneath("method"),
+    )
+    return Table("methods", "Methods and their sources", columns, records)
 
 
 def sizing_data(design: Design, case: Case) -> tuple[Table, ...]:
@@ -118,17 +131,23 @@ def _value_text(dimension: Dimension, value: float) -> str:
     return fields.UNIT_KINDS[dimension.unit].text({"value": value})
 
 
-def _method_words(method: Method, note: str) -> str:
-    words = f"{method.quantity} ({method.source}; {method.reading})"
-    return f"{words}; {note}" if note else words
+def _numbers(design: Design) -> dict[str, int]:
+    return {method.key: n for n, method in enumerate(design.methods, start=1)}
 
 
-def _rival_words(dimension: Dimension) -> str:
+def _method_words(dimension: Dimension, number: dict[str, int]) -> str:
+    words = f"{dimension.method.quantity} [{number[dimension.method.key]}]"
+    return f"{words}; {dimension.note}" if dimension.note else words
+
+
+def _rival_words(dimension: Dimension, number: dict[str, int]) -> str:
     rival = dimension.candidate
     if rival is None:
-        return "none"
+        return ""
     value = _value_text(dimension, rival.value)
-    return f"{value}: {rival.method.quantity} ({rival.method.citation}); {rival.reason}"
+    if rival.method.key == dimension.method.key:
+        return f"\nnot {value}: {rival.reason}"
+    return f"\nnot {value} by {rival.method.quantity} [{number[rival.method.key]}]: {rival.reason}"
 
 
 def _loss_words(design: Design) -> str:

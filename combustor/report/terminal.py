@@ -5,12 +5,13 @@ from __future__ import annotations
 import io
 import os
 import shutil
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import TextIO
 
 from rich.box import Box
 from rich.console import Console
+from rich.padding import Padding
 from rich.table import Table as RichTable
 from rich.text import Text
 
@@ -21,6 +22,7 @@ from combustor.report.theme import STYLES
 
 WIDEST = 100
 NARROWEST = 40
+_INDENT = 4
 
 _RULED = Box("    \n    \n ── \n    \n    \n    \n    \n    \n")
 _RULED_ASCII = Box("    \n    \n -- \n    \n    \n    \n    \n    \n", ascii=True)
@@ -95,16 +97,28 @@ def _facts(block: Facts) -> RichTable:
 def _draw_table(console: Console, table: Table, page: Page) -> None:
     console.print()
     parts = fit(table, page.width)
+    lines = range(len(table.records))
     for number, part in enumerate(parts):
         title = table.title if number == 0 else f"{table.title}, continued"
         console.print(Text(printable(title), style=STYLES["title"], overflow="fold"))
-        console.print(_part(part, table.marks, page))
+        if not table.below or number < len(parts) - 1:
+            console.print(_part(part, lines, table.marks, page))
+            continue
+        console.print(_part(part, (), table.marks, page))
+        for index in lines:
+            console.print(_part(part, (index,), table.marks, page, header=False))
+            if table.below[index]:
+                remark = Text(printable(table.below[index]), overflow="fold")
+                console.print(Padding(remark, (0, 0, 0, _INDENT)))
 
 
-def _part(part: Part, marks: Mapping[int, str], page: Page) -> RichTable:
+def _part(
+    part: Part, lines: Sequence[int], marks: Mapping[int, str], page: Page, header: bool = True
+) -> RichTable:
     # Rich draws one blank between columns from the box; the rest of the gap is padding.
     drawn = RichTable(
         box=_RULED_ASCII if page.ascii_only else _RULED,
+        show_header=header,
         show_edge=False,
         pad_edge=False,
         padding=(0, part.gap - 1, 0, 0),
@@ -119,7 +133,7 @@ def _part(part: Part, marks: Mapping[int, str], page: Page) -> RichTable:
             overflow="fold",
             width=width,
         )
-    for index in range(len(part.columns[0].cells)):
+    for index in lines:
         style = STYLES[marks.get(index, "")]
         drawn.add_row(*(Text(column.cells[index]) for column in part.columns), style=style)
     return drawn

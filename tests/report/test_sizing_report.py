@@ -1,5 +1,6 @@
 import json
 import math
+import re
 from types import SimpleNamespace
 
 import pytest
@@ -72,13 +73,23 @@ def test_each_dimension_has_its_unit_and_its_rival(design):
         return next(text for text in lines if text.startswith(name))
 
     assert line("liner area ratio").split()[3:5] == ["0.671", "-"]
-    assert "0.700: fixed liner area" in " ".join(line("liner area ratio").split())
+    assert lines[lines.index(line("liner area ratio")) + 1].split() == (
+        "not 0.700 by fixed liner area ratio [2]: more loss".split()
+    )
     assert line("liner diameter").split()[2:4] == ["389.70", "mm"]
-    assert line("liner diameter").endswith("none")
+    assert line("liner diameter").endswith("optimum liner area ratio [1]; rounded to 0.1 mm")
     assert line("vane angle").split()[2:4] == ["45.0", "deg"]
     assert line("dil_2 holes").split()[2] == "8"
     assert line("film air").split()[2:4] == ["31.00", "%"]
     assert line("dil_2 hole area").split()[3:5] == ["731", "mm2"]
+
+
+def test_every_number_of_a_method_stands_in_the_list_of_methods(design, case):
+    text = render(sizing_report(design, case, ()), Page(100))
+    listed = text.split("Methods and their sources")[1].split("Zones")[0]
+    for number in set(re.findall(r"\[\d+\]", text)):
+        assert f"\n{number}  " in listed
+    assert "common practice, no source" in listed
 
 
 def test_the_document_holds_every_dimension_in_full(design, case):
