@@ -61,7 +61,8 @@ def size(arguments: argparse.Namespace) -> Answer:
     design = combustor.size(case)
     notes = _write_csv(arguments, report.sizing_data(design, case))
     if arguments.output:
-        write_case(arguments.output, case, table_of(design.hardware), force=arguments.force)
+        table = table_of(design.hardware, case.combustor)
+        write_case(arguments.output, case, table, force=arguments.force)
         notes += (f"wrote {arguments.output}",)
     if case.hardware is not None:
         notes += ("the case holds metal already: it was left out and sized anew",)

@@ -26,10 +26,12 @@ def balances_of(gas: Gas, operating: Operating, coupled: Coupled) -> dict[str, f
     air_flow, fuel_flow = operating.inlet.mass_flow, fire.fuel_flow
     entering = air_flow * gas.element_moles(operating.air)
     entering += fuel_flow * gas.element_moles(operating.fuel)
+    entering += operating.water_flow * gas.element_moles(operating.water)
     leaving = fire.exit_flow * gas.element_moles(fire.exit.mass_fractions)
     present = entering > 0.0
     elements = float(np.max(np.abs(leaving - entering)[present] / entering[present]))
     supplied = air_flow * operating.air_enthalpy + fuel_flow * operating.fuel_enthalpy
+    supplied += operating.water_flow * operating.water_enthalpy
     carried = fire.exit_flow * fire.exit.enthalpy + casing_loss_of(coupled.walls)
     heat = fuel_flow * operating.lower_heating_value
     return {

@@ -96,7 +96,7 @@ def light(
         mixing = mixing_rate(split, hardware.liner_height)
     inflows = [_air(operating, flow) for flow in split.openings]
     primary = PrimaryZone(
-        fuel=Stream(fuel_flow, operating.fuel_enthalpy, operating.fuel),
+        fuel=_injected(operating, fuel_flow),
         air=_joined(operating, inflows, [entry.primary for entry in layout.entries]),
         volume=layout.primary_volume,
         unmixedness=settings.unmixedness,
@@ -112,7 +112,8 @@ def light(
     chain = burn(gas, pressure, primary, cells, warm, heat_losses)
     last = _joined(operating, inflows, [entry.exit for entry in layout.entries])
     mixed = None if chain.exit is None else _mixed(gas, chain, last)
-    return Fire(chain, mixed, fuel_flow, operating.inlet.mass_flow + fuel_flow, mixing)
+    exit_flow = operating.inlet.mass_flow + fuel_flow + operating.water_flow
+    return Fire(chain, mixed, fuel_flow, exit_flow, mixing)
 
 
 def chain_pressure(split: AirSplit) -> float:
@@ -169,8 +170,18 @@ def liner_gas_of(gas: Gas, operating: Operating, split: AirSplit, fire: Fire) ->
         temperature=temperature,
         gas_constant=mean_constant,
         heat_capacity_ratio=heat / (heat - mean_constant),
-        fuel_flow=fire.fuel_flow,
+        fuel_flow=fire.fuel_flow + operating.water_flow,
         fuel_station=0.0,
+    )
+
+
+def _injected(operating: Operating, fuel_flow: float) -> Stream:
+    """Return the fuel with the water that goes in with it."""
+    water = operating.water_flow / (fuel_flow + operating.water_flow)
+    return Stream(
+        fuel_flow + operating.water_flow,
+        (1.0 - water) * operating.fuel_enthalpy + water * operating.water_enthalpy,
+        (1.0 - water) * operating.fuel + water * operating.water,
     )
 
 

@@ -38,6 +38,7 @@ def findings_of(
         *_emissions(case, rated),
         *_jets(rated),
         *_annulus(rated, coupled),
+        *_ignored(point),
         *_notices(rated, coupled, fuel, settings),
     ]
     order = {"act": 0, "watch": 1, "ok": 2}
@@ -196,6 +197,17 @@ def _annulus(rated: PointRating, coupled: Coupled) -> Iterator[Finding]:
                 "Rows near its fast end flow less than their area says: widen the annulus.",
                 PRACTICE,
             )
+
+
+def _ignored(point: Point) -> Iterator[Finding]:
+    if point.fuel_split is not None and len(point.fuel_split) > 1:
+        yield Finding(
+            "watch",
+            "fuel_split not acted on",
+            advice="All fuel is taken to enter one primary zone; the split over injectors is not "
+            "rated.",
+            source="extent of this rating",
+        )
 
 
 def _notices(

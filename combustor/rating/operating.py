@@ -8,10 +8,20 @@ import numpy as np
 from numpy.typing import NDArray
 
 from combustor.airflow.result import Inlet
+from combustor.base.method import Method
 from combustor.case.schema import Case, Point
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.sizing.fire import HotGas, Supply, fuel_air_ratio_for, hot_gas
+
+LIQUID_WATER = Method(
+    key="liquid-water-enthalpy",
+    quantity="enthalpy of injected water, liquid at 25 degC",
+    source="CODATA 1989: enthalpy of formation of liquid water, -285.83 kJ/mol",
+    reading="from memory",
+    note="10 K of water temperature is 0.04 MJ/kg, a sixtieth of its latent heat",
+)
+LIQUID_WATER_ENTHALPY = -285.83e3 / 18.01528e-3
 
 
 @dataclass(frozen=True)
@@ -32,6 +42,10 @@ class Operating:
         At the fuel's temperature, J/kg.
     fuel_flow : float
         As stated, or that of complete combustion to the exit temperature, kg/s.
+    water : ndarray
+        Mass fractions of pure water.
+    water_flow, water_enthalpy : float
+        Liquid water injected with the fuel, kg/s and J/kg.
     exit_temperature : float or None
         Asked for, K; None where the fuel flow is stated.
     lower_heating_value : float
@@ -51,6 +65,9 @@ class Operating:
     air_enthalpy: float
     fuel_enthalpy: float
     fuel_flow: float
+    water: NDArray[np.float64]
+    water_flow: float
+    water_enthalpy: float
     exit_temperature: float | None
     lower_heating_value: float
     stoichiometric_fuel_air_ratio: float
@@ -109,6 +126,9 @@ def operating_of(case: Case, point: Point, fuel: Fuel, gas: Gas) -> Operating:
         air_enthalpy=gas.enthalpy(temperature, pressure, air),
         fuel_enthalpy=gas.enthalpy(fuel_temperature, pressure, fuel_fractions),
         fuel_flow=fuel_flow,
+        water=gas.from_mole_fractions({"H2O": 1.0}),
+        water_flow=point.water_injection,
+        water_enthalpy=LIQUID_WATER_ENTHALPY,
         exit_temperature=point.exit_temperature,
         lower_heating_value=fuel.lower_heating_value,
         stoichiometric_fuel_air_ratio=fuel.stoichiometric_fuel_air_ratio,

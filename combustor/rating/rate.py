@@ -54,7 +54,7 @@ def rate_case(
     wanted = _wanted(case, points)
     fuel = fuel_of(case, fuel_name, mechanism)
     gas = Gas.load(fuel.mechanism)
-    findings = ()
+    findings: tuple[Finding, ...] = ()
     if case.hardware is None:
         own = fuel_of(case)
         design = size(

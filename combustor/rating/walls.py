@@ -64,7 +64,9 @@ def gas_side_of(
         mass_flow=flow,
         area=hardware.liner.area.at(x) * hardware.cans,
         hydraulic_diameter=hardware.liner.hydraulic_diameter.at(x),
-        fuel_air_ratio=fire.fuel_flow * (1.0 + operating.humidity) / (flow - fire.fuel_flow),
+        fuel_air_ratio=fire.fuel_flow
+        * (1.0 + operating.humidity)
+        / (flow - fire.fuel_flow - operating.water_flow),
         pressure=chain_pressure(split),
         x_h2o=np.array([m[gas.index("H2O")] for m in moles]),
         x_co2=np.array([0.0 if carbon_dioxide is None else m[carbon_dioxide] for m in moles]),
