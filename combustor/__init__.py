@@ -22,7 +22,6 @@ if TYPE_CHECKING:
     from combustor.fuel.of_case import fuel_of
     from combustor.fuel.record import Fuel
     from combustor.rating.record import PointRating, Ratings
-    from combustor.report.frame import frame
     from combustor.sizing.record import Design
 
 __version__ = "0.1.0"
@@ -39,7 +38,6 @@ _HOMES = {
     "Ratings": "combustor.rating.record",
     "find_fuel": "combustor.api",
     "flame": "combustor.api",
-    "frame": "combustor.report.frame",
     "fuel_of": "combustor.fuel.of_case",
     "load_case": "combustor.case",
     "rate": "combustor.api",
@@ -60,7 +58,6 @@ __all__ = [
     "__version__",
     "find_fuel",
     "flame",
-    "frame",
     "fuel_of",
     "load_case",
     "rate",

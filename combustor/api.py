@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Any
 if TYPE_CHECKING:
     from combustor.case.schema import Case
     from combustor.fuel.record import Fuel
-    from combustor.rating.record import Ratings
+    from combustor.report.frame import RatedCase
     from combustor.sizing.record import Design
     from combustor.studies.flame import Flame
 
@@ -41,7 +41,7 @@ def rate(
     fuel: str | None = None,
     points: Sequence[str] | None = None,
     mechanism: str | None = None,
-) -> Ratings:
+) -> RatedCase:
     """Rate the metal of a case; a case without metal is sized first.
 
     Parameters
@@ -53,10 +53,16 @@ def rate(
         Names of the operating points wanted; all when left out.
     mechanism : str, optional
         Cantera file in place of the tool's choice.
+
+    Returns
+    -------
+    RatedCase
+        One rating per operating point, in the case's order; ``frame()`` is a DataFrame.
     """
     from combustor.rating.rate import rate_case
+    from combustor.report.frame import RatedCase
 
-    return rate_case(case, fuel_name=fuel, points=points, mechanism=mechanism)
+    return RatedCase.of(rate_case(case, fuel_name=fuel, points=points, mechanism=mechanism))
 
 
 def flame(fuel: str | Fuel, **conditions: Any) -> Flame:

@@ -55,6 +55,9 @@ def _answer(arguments: argparse.Namespace) -> int:
     from combustor.base.errors import CombustorError
     from combustor.cli.complaint import complaint, internal_complaint
 
+    # The matrices are small: a second BLAS thread only burns the other core. Read by numpy
+    # when it is first imported, which is below.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     try:
         with warnings.catch_warnings():
             warnings.simplefilter("ignore")

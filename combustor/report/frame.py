@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass, fields
 from typing import TYPE_CHECKING
 
 from combustor.rating.record import Ratings
@@ -21,3 +22,17 @@ def frame(ratings: Ratings) -> pd.DataFrame:
         [row(columns, point) for point in ratings.points],
         columns=[field.key for field in columns],
     )
+
+
+@dataclass(frozen=True)
+class RatedCase(Ratings):
+    """Ratings that can be had as a DataFrame."""
+
+    @classmethod
+    def of(cls, ratings: Ratings) -> RatedCase:
+        """Return the same ratings with :meth:`frame`."""
+        return cls(**{field.name: getattr(ratings, field.name) for field in fields(Ratings)})
+
+    def frame(self) -> pd.DataFrame:
+        """Return one row per operating point, unit in the column's name."""
+        return frame(self)

@@ -202,6 +202,40 @@ def test_the_module_runs_as_a_process_and_pipes_are_plain():
     assert max(map(len, done.stdout.split("\n"))) <= 100
 
 
+@pytest.mark.skipif(sys.platform == "win32", reason="needs a pseudo-terminal")
+@pytest.mark.parametrize(
+    ("environment", "coloured"),
+    [
+        ({"TERM": "xterm"}, True),
+        ({"TERM": "xterm", "NO_COLOR": "1"}, False),
+        ({"TERM": "dumb"}, False),
+    ],
+)
+def test_colour_on_a_terminal_unless_it_is_not_wanted(environment, coloured):
+    import pty
+
+    inherited = {key: value for key, value in os.environ.items() if key != "NO_COLOR"}
+    ours, theirs = pty.openpty()
+    process = subprocess.Popen(
+        [sys.executable, "-m", "combustor", "fuels"],
+        stdout=theirs,
+        stderr=theirs,
+        cwd=ROOT,
+        env={**inherited, "COLUMNS": "100", **environment},
+    )
+    os.close(theirs)
+    shown = b""
+    try:
+        while chunk := os.read(ours, 65536):
+            shown += chunk
+    except OSError:  # how Linux says that the other end has closed
+        pass
+    os.close(ours)
+    assert process.wait() == 0
+    assert b"natural-gas" in shown
+    assert (b"\x1b[" in shown) is coloured
+
+
 def test_an_ascii_terminal_gets_ascii():
     done = run("fuels", env={"PYTHONIOENCODING": "ascii"})
     assert (done.returncode, done.stderr) == (0, "")

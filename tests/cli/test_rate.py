@@ -179,6 +179,7 @@ def test_a_loss_no_area_gives_is_explained_and_exits_1(capsys, folder):
 def test_the_same_in_python(sized):
     case = combustor.load_case(sized)
     ratings = combustor.rate(case, points=["full"])
-    frame = combustor.frame(ratings)
+    assert isinstance(ratings, combustor.Ratings)
+    frame = ratings.frame()
     assert list(frame["name"]) == ["full"]
     assert frame.loc[0, "exit_temperature_K"] == pytest.approx(950 + 273.15, abs=0.5)
