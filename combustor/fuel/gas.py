@@ -19,7 +19,7 @@ from numpy.typing import NDArray
 from combustor.base.errors import InputError, NotConvergedError, Problem
 from combustor.base.method import Method
 from combustor.fuel.mechanism import locate
-from combustor.fuel.rates import Rates
+from combustor.fuel.rates import POLYNOMIAL_GAP, Rates
 
 Array = NDArray[np.float64]
 
@@ -274,13 +274,15 @@ class Gas:
         """
         solution = self.solution
         solution.set_unnormalized_mass_fractions(mass_fractions)
-        value = guess
+        value, change = guess, np.inf
         for _ in range(60):
             solution.TP = value, pressure
             change = (enthalpy - solution.enthalpy_mass) / solution.cp_mass
             value = min(max(value + change, 0.5 * value, 50.0), 2.0 * value, 6000.0)
             if abs(change) <= 1e-11 * value:
                 return float(value)
+        if abs(change) < POLYNOMIAL_GAP:
+            return float(value)
         raise NotConvergedError(
             f"no temperature between 50 and 6000 K gives an enthalpy of {enthalpy:.6g} J/kg"
         )

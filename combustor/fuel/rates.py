@@ -20,6 +20,10 @@ LEAST_MOLES = 1e-24
 LOWEST_TEMPERATURE = 100.0  # K
 HIGHEST_TEMPERATURE = 6000.0  # K
 
+# Where two polynomials of a species meet, its enthalpy may jump by as much as this many kelvin
+# are worth, and a mixture's enthalpy may fall between: the nearest temperature is then the answer.
+POLYNOMIAL_GAP = 1e-3
+
 
 class Rates:
     """Production rates of one mechanism and their exact derivatives at constant enthalpy.
@@ -166,7 +170,7 @@ class Rates:
         """
         solution = self._solution
         solution.set_unnormalized_mass_fractions(moles * self.molar_masses)
-        value = guess
+        value, change = guess, float("inf")
         for _ in range(40):
             solution.TP = value, pressure
             change = (enthalpy - solution.enthalpy_mass) / solution.cp_mass
@@ -177,7 +181,7 @@ class Rates:
                 return float("nan")
             if abs(change) < 1e-11 * value:
                 return value
-        return float("nan")
+        return value if abs(change) < POLYNOMIAL_GAP else float("nan")
 
     def volume_slope(
         self, temperature: float, pressure: float, moles: Array
