@@ -28,7 +28,7 @@ SECONDARY_SHARE = Method(
     reading="judgement",
 )
 
-PREFERRED_SWIRLER, HIGHEST_SWIRLER = 0.10, 0.12
+LEAST_SWIRLER, PREFERRED_SWIRLER, HIGHEST_SWIRLER = 0.03, 0.10, 0.12
 PREFERRED_DOME = 0.06
 USUAL_SECONDARY, LEAST_SECONDARY = 0.05, 0.02
 LEAST_PRIMARY_ROW = 0.04
@@ -163,9 +163,10 @@ def _front_and_secondary(
     share = demand.primary_jet_share
     usual = _usual_front(demand)
     most = primary_air - share * LEAST_PRIMARY_ROW
-    front = min(usual, most)
-    if demand.swirler is not None and demand.dome is not None and usual > most:
-        _refuse_front(demand, usual, primary_air)
+    least = _least_front(demand)
+    if least > most:
+        _refuse_front(demand, least, primary_air)
+    front = max(min(usual, most), least)
     rest = secondary_air - demand.film_mixed
     secondary = rest - front - (primary_air - front) / share
     is_free = demand.swirler is None or demand.dome is None
@@ -195,12 +196,13 @@ def _front_and_secondary(
 def _refuse_front(demand: BudgetDemand, front: float, primary_air: float) -> None:
     raise InfeasibleError(
         (
-            f"swirler and dome are stated to take {_percent(front)} of the air",
+            f"swirler and dome are to take at least {_percent(front)} of the air",
             f"an equivalence ratio of {demand.primary:.2f} leaves {_percent(primary_air)} for "
             "the whole primary zone",
             "no air is left for the primary row",
         ),
-        "Lower swirler_air or dome_air, or lower equivalence_ratio.primary.",
+        "Lower swirler_air or dome_air, lower equivalence_ratio.primary, or raise "
+        "exit_temperature.",
     )
 
 
@@ -208,6 +210,12 @@ def _usual_front(demand: BudgetDemand) -> float:
     swirler = PREFERRED_SWIRLER if demand.swirler is None else demand.swirler
     dome = PREFERRED_DOME if demand.dome is None else demand.dome
     return swirler + dome
+
+
+def _least_front(demand: BudgetDemand) -> float:
+    """Return the least a front end can take: what is stated, and a swirler that swirls."""
+    swirler = LEAST_SWIRLER if demand.swirler is None else demand.swirler
+    return swirler + (demand.dome or 0.0)
 
 
 def _swirler_and_dome(demand: BudgetDemand, front: float) -> tuple[float, float]:
@@ -218,7 +226,8 @@ def _swirler_and_dome(demand: BudgetDemand, front: float) -> tuple[float, float]
         return front - demand.dome, demand.dome
     usual = PREFERRED_SWIRLER + PREFERRED_DOME
     if front <= usual:
-        return front * PREFERRED_SWIRLER / usual, front * PREFERRED_DOME / usual
+        swirler = max(front * PREFERRED_SWIRLER / usual, LEAST_SWIRLER)
+        return swirler, front - swirler
     swirler = min(front - PREFERRED_DOME, HIGHEST_SWIRLER)
     return swirler, front - swirler
 
