@@ -21,6 +21,7 @@ from combustor.sizing.section import Section
 FREE_PASSES = 8
 FROZEN_PASSES = 12
 SETTLED = 1e-5
+LEAST_JET_SHARE = 0.2
 
 
 def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
@@ -49,7 +50,7 @@ def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
     """
     refuse_unsized(case)
     task = task_of(case, fuel, gas)
-    state, change = settle(task)
+    state, change, passes = settle(task)
     rounded = round_to_drills(task, state)
     return Design(
         hardware=rounded.hardware,
@@ -59,7 +60,7 @@ def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
         zones=rounded.zones,
         pressure_loss_target=case.targets.pressure_loss or 0.0,
         fuel_flow=task.duty.fuel_flow,
-        convergence=_convergence(state, change, rounded),
+        convergence=_convergence(state, change, passes, rounded),
     )
 
 
@@ -80,24 +81,27 @@ def task_of(case: Case, fuel: Fuel, gas: Gas) -> Task:
     return Task(case, duty, section, casing)
 
 
-def settle(task: Task) -> tuple[State, float]:
-    """Return the state that the passes settle on, and the last change of any share.
+def settle(task: Task) -> tuple[State, float, int]:
+    """Return the state the passes settle on, the last change of any share, and their number.
 
     Lengths, counts and positions follow until they repeat, then they are held while the
     shares settle.
     """
     state = first_state(task)
+    passes = 0
     for _ in range(FREE_PASSES):
         before, state = state, next_state(task, state, frozen=False)
+        passes += 1
         if state.sketch == before.sketch and _change(before, state) < SETTLED:
             break
     change = 1.0
     for _ in range(FROZEN_PASSES):
         before, state = state, next_state(task, state, frozen=True)
+        passes += 1
         change = _change(before, state)
         if change < SETTLED:
             break
-    return state, change
+    return state, change, passes
 
 
 def refuse_unsized(case: Case) -> None:
@@ -151,16 +155,13 @@ def refuse_unsized(case: Case) -> None:
         raise InputError(problems)
 
 
-LEAST_JET_SHARE = 0.2
-
-
 def _change(before: State, after: State) -> float:
     if before.shares.keys() != after.shares.keys():
         return 1.0
     return max(abs(after.shares[name] - before.shares[name]) for name in after.shares)
 
 
-def _convergence(state: State, change: float, rounded: Rounded) -> Convergence:
+def _convergence(state: State, change: float, passes: int, rounded: Rounded) -> Convergence:
     assert state.fit is not None
     fit = state.fit.convergence
     messages = []
@@ -172,4 +173,4 @@ def _convergence(state: State, change: float, rounded: Rounded) -> Convergence:
         messages.append("whole holes and drill sizes miss a target by more than its tolerance")
     if not rounded.split.convergence.converged:
         messages.append(rounded.split.convergence.message)
-    return Convergence(not messages, rounded.miss, fit.iterations, "; ".join(messages))
+    return Convergence(not messages, rounded.miss, passes, "; ".join(messages))

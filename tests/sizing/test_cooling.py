@@ -63,7 +63,7 @@ ALONG = (
 
 @pytest.fixture(scope="module")
 def sides(task):
-    state, _ = settle(task)
+    state, *_ = settle(task)
     sketch, duty = state.sketch, task.duty
     profile = liner_profile(bare_metal(sketch), state.shares, duty.overall, duty.table, 0.5)
     gas = cooling.gas_side(

@@ -158,7 +158,7 @@ def test_order_of_points_does_not_matter(design, fuel, gas, make_can):
 
 
 def test_areas_meet_flows_and_loss(task):
-    state, change = settle(task)
+    state, change, _ = settle(task)
     assert change < 1e-5
     aim = Aim(state.shares, 0.045)
     gas = state.profile.liner_gas(task.duty.fuel_flow)
@@ -276,6 +276,13 @@ def test_impossible_targets_explain_the_chain(old, new, said, fuel, gas, make_ca
     assert len(caught.value.chain) >= 2
     assert caught.value.advice
     assert caught.value.exit_code == 1
+
+
+def test_a_diffuser_that_takes_the_loss_is_refused(fuel, gas, make_can):
+    case = make_can(targets="diffuser_loss_coefficient = 1.7\n")
+    with pytest.raises(InfeasibleError, match="the diffuser takes") as caught:
+        size(case, fuel, gas)
+    assert "too weak" in caught.value.chain[-1]
 
 
 def test_relight_point_is_judged_with_low_confidence(fuel, gas, make_can, design):
