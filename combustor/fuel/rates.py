@@ -136,6 +136,7 @@ class Rates:
         """Return d(net rate of progress) / d(third-body concentration) [1/s]."""
         solution = self._solution
         body = solution.third_body_concentrations[self._third_body]
+        body = np.where(body > 0.0, body, np.inf)
         slope = self._multiplies
         if self._through_constant:
             constant = solution.forward_rate_constants

@@ -119,6 +119,33 @@ def solve(zone: Zone, guess: ZoneState | None = None) -> Solved:
     return _judged(zone, outcome, spent + outcome.iterations)
 
 
+def hold(zone: Zone, guess: ZoneState | None = None) -> Solved:
+    """Solve a zone that has to hold its flame against its fresh inflow.
+
+    Like `solve`, but a zone that is steady only because there is nothing to burn in it counts
+    as blown out.
+
+    Parameters
+    ----------
+    zone : Zone
+    guess : ZoneState, optional
+        A neighbouring solution.
+
+    Returns
+    -------
+    Solved
+    """
+    solved = solve(zone, guess)
+    if solved.status != "burning":
+        return solved
+    masses = zone.mean_moles * zone.gas.rates.molar_masses
+    temperature = mean_temperature(zone, solved.state)
+    inlet = zone.gas.temperature(zone.mean_enthalpy, zone.pressure, masses)
+    if temperature > inlet + NEGLIGIBLE_RISE or temperature > burning_temperature(zone):
+        return solved
+    return replace(solved, status="blown_out")
+
+
 def equilibrium_state(zone: Zone, residence_time: float | None = None) -> ZoneState:
     """Return every stream at the equilibrium of what it takes in.
 
@@ -153,9 +180,12 @@ def mean_temperature(zone: Zone, state: ZoneState) -> float:
 
 
 def burning_temperature(zone: Zone) -> float:
-    """Return the mass-mean temperature above which the zone as a whole counts as burning [K]."""
+    """Return the mass-mean temperature above which the zone as a whole counts as burning [K].
+
+    A mixture that could hardly warm itself has to warm by a share of the least rise that counts.
+    """
     inlet, hottest = _limits(zone.gas, zone.pressure, zone.mean_moles, zone.mean_enthalpy, zone)
-    return inlet + BURNING_SHARE * (hottest - inlet)
+    return inlet + BURNING_SHARE * max(hottest - inlet, NEGLIGIBLE_RISE)
 
 
 def burning_streams(zone: Zone, state: ZoneState) -> NDArray[np.bool_]:
@@ -271,9 +301,11 @@ def _entered(large: Zone) -> tuple[ZoneState | None, int]:
     """Return a long zone's state from equilibrium, in time if need be."""
     start = equilibrium_state(large)
     outcome = newton(large, start)
-    if outcome.converged and outcome.stable and _all_burn(large, outcome.state):
+    threshold = burning_temperature(large)
+    good = outcome.converged and outcome.stable and _all_burn(large, outcome.state)
+    if good and mean_temperature(large, outcome.state) > threshold:
         return outcome.state, outcome.iterations
-    marched = march(large, start, burning_temperature(large))
+    marched = march(large, start, threshold)
     spent = outcome.iterations + marched.iterations
     return (marched.state if marched.converged else None), spent
 

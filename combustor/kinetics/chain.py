@@ -14,7 +14,7 @@ from combustor.base.errors import InputError, Problem
 from combustor.base.method import Method, Notice
 from combustor.fuel.gas import Gas, GasState
 from combustor.kinetics.balances import Balances, balances
-from combustor.kinetics.branch import Solved, Status, solve
+from combustor.kinetics.branch import Solved, Status, hold, solve
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
 from combustor.kinetics.streams import Bundle, Stream
 from combustor.kinetics.tear import Tear
@@ -283,7 +283,7 @@ class _Pass:
         return bundle.drawn(cell.returned) if cell.returned > 0.0 else bundle
 
     def _solve_zone(self, place: int, zone: Zone) -> Bundle:
-        solved = solve(zone, self.guesses[place])
+        solved = (solve if place > 0 else hold)(zone, self.guesses[place])
         del self.solved[place:], self.zones[place:]
         self.solved.append(solved)
         self.zones.append(zone)

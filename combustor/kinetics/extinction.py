@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from combustor.base.method import Method
 from combustor.fuel.gas import Gas, GasState
-from combustor.kinetics.branch import descend, follow, solve
+from combustor.kinetics.branch import descend, follow, hold
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
 from combustor.kinetics.stirred import stirred_zone
 from combustor.kinetics.zone import Zone, ZoneState
@@ -142,7 +142,7 @@ def blowout_fuel_flow(
         fresh = fresh_bundle(gas, leaner, distribution_of(leaner))
         return primary_zone(gas, pressure, leaner, fresh, heat_loss * share)
 
-    operating = solve(zone_at(1.0), warm)
+    operating = hold(zone_at(1.0), warm)
     if operating.status != "burning":
         return None
     followed = descend(

@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from combustor.base.errors import InputError, Problem
 from combustor.fuel.gas import Gas, GasState
-from combustor.kinetics.branch import Solved, Status, solve
+from combustor.kinetics.branch import Solved, Status, hold
 from combustor.kinetics.zone import Zone, ZoneState
 
 Array = NDArray[np.float64]
@@ -96,7 +96,7 @@ def stirred(
         start = ZoneState(moles[None, :], np.array([guess.temperature]), 1.0)
         rate = zone.throughflow_rate(zone.throughflow_volume(start))
         start = ZoneState(start.moles, start.temperatures, rate)
-    return as_stirred(zone, solve(zone, start))
+    return as_stirred(zone, hold(zone, start))
 
 
 def stirred_zone(

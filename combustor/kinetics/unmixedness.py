@@ -33,6 +33,8 @@ STREAMS_BY_SQUARE_ROOT = Method(
 )
 TAIL = 1e-3  # mass beyond the outermost bin edges; it joins the outermost streams
 
+NARROWEST = 1e-3  # width below which the shape no longer changes, only its scale
+
 
 @dataclass(frozen=True, eq=False)
 class Distribution:
@@ -106,7 +108,8 @@ def beta_streams(mean: float, unmixedness: float, streams: int) -> Distribution:
         raise InputError(
             Problem("one stream has no width", "2 or more, or unmixedness 0", "streams", streams)
         )
-    total = (1.0 - mean) / (mean * unmixedness**2) - 1.0
+    shaped = max(unmixedness, NARROWEST)
+    total = (1.0 - mean) / (mean * shaped**2) - 1.0
     first, second = mean * total, (1.0 - mean) * total
     outer = np.sqrt(betaincinv(first, second, [TAIL, 1.0 - TAIL]))
     edges = np.linspace(outer[0], outer[1], streams + 1) ** 2

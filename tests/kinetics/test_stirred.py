@@ -61,6 +61,7 @@ def test_pure_air_is_blown_out_not_an_error(mixtures):
     gas = mixtures.gas
     enthalpy = gas.enthalpy(700.0, PRESSURE, mixtures.air)
     result = stirred(gas, PRESSURE, enthalpy, mixtures.air, 5e-3)
+    assert result.status == "blown_out"
     assert result.state.temperature == pytest.approx(700.0, abs=0.5)
 
 
