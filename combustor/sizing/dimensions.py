@@ -8,16 +8,16 @@ from collections.abc import Iterator
 from combustor.airflow.jets import PENETRATION_ROW
 from combustor.hardware.metal import Opening
 from combustor.hardware.zone_air import PRIMARY_JET_SHARE
-from combustor.sizing import cooling, diffuser, liner_ratio, rows, swirler, zones
+from combustor.sizing import cooling, diffuser, film_slots, liner_ratio, rows, swirler, zones
 from combustor.sizing.air_budget import AIR_BUDGET, DOME_SHARES, PREFERRED_DOME, PREFERRED_SWIRLER
 from combustor.sizing.drill import DRILL_STEPS
 from combustor.sizing.exit_pattern import pattern_factor_of
 from combustor.sizing.fire import FUEL_DEMAND, FUEL_DEMAND_SIMPLE
 from combustor.sizing.loop import AREAS
-from combustor.sizing.passes import State, Task
 from combustor.sizing.record import Candidate, Dimension
 from combustor.sizing.rounding import Rounded
 from combustor.sizing.sketch import SWIRLER
+from combustor.sizing.state import State, Task
 
 
 def dimensions_of(task: Task, state: State, rounded: Rounded) -> tuple[Dimension, ...]:
@@ -329,12 +329,12 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
     pitches = [
         b - a for a, b in zip(stations, [*stations[1:], state.frame.liner_length], strict=True)
     ]
-    yield Dimension("film slots", len(slots), "count", cooling.SLOT_PITCH)
+    yield Dimension("film slots", len(slots), "count", film_slots.SLOT_PITCH)
     yield Dimension(
         "film slot pitch, widest",
         max(pitches),
         "length",
-        cooling.SLOT_PITCH if targets.slot_pitch is None else diffuser.STATED,
+        film_slots.SLOT_PITCH if targets.slot_pitch is None else diffuser.STATED,
         None,
         f"closest {1e3 * min(pitches):.0f} mm",
     )
@@ -342,16 +342,16 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         "film slot height",
         slots[0].height,
         "length",
-        cooling.SLOT_HEIGHT if targets.slot_height is None else diffuser.STATED,
+        film_slots.SLOT_HEIGHT if targets.slot_height is None else diffuser.STATED,
     )
-    yield Dimension("film slot lip", slots[0].lip_thickness, "length", cooling.SLOT_HEIGHT)
+    yield Dimension("film slot lip", slots[0].lip_thickness, "length", film_slots.SLOT_HEIGHT)
     for ring, peak in zip(slots, film_plan.peak, strict=True):
         opening = rounded.hardware.opening(ring.name)
         yield Dimension(
             f"{ring.name}: metering holes",
             opening.count,
             "count",
-            cooling.METERING_HOLES,
+            film_slots.METERING_HOLES,
             None,
             f"{1e3 * _diameter(opening):.1f} mm at x {1e3 * ring.station:.0f} mm; panel ends at "
             f"{peak:.0f} K on this film alone",

@@ -7,11 +7,10 @@ from collections.abc import Iterator
 
 from combustor.base.finding import Finding, Level
 from combustor.base.method import Method
-from combustor.sizing import cooling, diffuser, liner_ratio, rows, swirler, zones
+from combustor.sizing import cooling, diffuser, film_slots, liner_ratio, rows, swirler, zones
 from combustor.sizing.casing import loading_of
 from combustor.sizing.dimensions import annulus_velocity
 from combustor.sizing.exit_pattern import pattern_factor_of
-from combustor.sizing.passes import State, Task
 from combustor.sizing.reference_area import (
     CHEMICAL_LOADING,
     RELIGHT_LOADING,
@@ -19,6 +18,7 @@ from combustor.sizing.reference_area import (
 )
 from combustor.sizing.rounding import LOSS_TOLERANCE, ZONE_TOLERANCE, Rounded
 from combustor.sizing.sketch import SWIRLER
+from combustor.sizing.state import State, Task
 
 HEAD_RATIO = Method(
     key="hole-head-ratio",
@@ -161,7 +161,7 @@ def _wall(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
 
 
 def _metering(rounded: Rounded) -> Iterator[Finding]:
-    low, high = cooling.METERING_HOLES.validity["pitch_over_diameter"]
+    low, high = film_slots.METERING_HOLES.validity["pitch_over_diameter"]
     pitches = {}
     for ring in rounded.sketch.slots:
         opening = rounded.hardware.opening(ring.name)
@@ -184,7 +184,7 @@ def _metering(rounded: Rounded) -> Iterator[Finding]:
                 "-",
                 ("more film_air or a lower slot_height" if is_sparse else "a higher slot_height")
                 + f"; {count} of {len(pitches)} slots lie outside",
-                cooling.METERING_HOLES.citation,
+                film_slots.METERING_HOLES.citation,
             )
 
 

@@ -10,12 +10,12 @@ from combustor.airflow.result import AirSplit
 from combustor.airflow.split import split
 from combustor.hardware.metal import Hardware
 from combustor.hardware.zone_air import zone_air
-from combustor.sizing.cooling import with_metering
 from combustor.sizing.drill import drill_step
-from combustor.sizing.passes import State, Task
+from combustor.sizing.film_slots import with_metering
 from combustor.sizing.profile import liner_profile
 from combustor.sizing.record import ZoneTarget
 from combustor.sizing.sketch import DOME, SWIRLER, Sketch, metal_of
+from combustor.sizing.state import State, Task
 
 ZONE_TOLERANCE = 0.03
 LOSS_TOLERANCE = 1e-3

@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass
 
-from combustor.airflow.jets import HOLE_NUMBER, PENETRATION, PENETRATION_ROW, penetration_row
+from combustor.airflow.jets import penetration_row
 from combustor.base.method import Method
 from combustor.sizing.section import Section
 
@@ -43,8 +43,6 @@ PENETRATION_ROUND, PENETRATION_RING = 0.33, 0.40
 LEAST_COUNT = 6
 AIMED_PITCH, LEAST_PITCH = 2.0, 1.5
 WEAK_MOMENTUM_RATIO = 10.0
-
-METHODS_BEHIND = (HOLE_NUMBER, PENETRATION, PENETRATION_ROW)
 
 
 @dataclass(frozen=True)

@@ -10,13 +10,15 @@ from combustor.fuel.record import Fuel
 from combustor.sizing.air_budget import PREFERRED_DOME, PREFERRED_SWIRLER
 from combustor.sizing.casing import casing_of
 from combustor.sizing.dimensions import dimensions_of
+from combustor.sizing.draft import first_state
 from combustor.sizing.duty import duty_of
 from combustor.sizing.findings import findings_of
 from combustor.sizing.frame import highest_annulus_velocity
-from combustor.sizing.passes import State, Task, first_state, next_state
+from combustor.sizing.passes import next_state
 from combustor.sizing.record import Design
 from combustor.sizing.rounding import Rounded, round_to_drills
 from combustor.sizing.section import Section
+from combustor.sizing.state import State, Task
 
 FREE_PASSES = 8
 FROZEN_PASSES = 12

@@ -10,8 +10,8 @@ from combustor.fuel import catalogue
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.sizing import Design, size
-from combustor.sizing.passes import Task
 from combustor.sizing.size import task_of
+from combustor.sizing.state import Task
 
 CAN = """\
 title = "Gravel works, fan drive"

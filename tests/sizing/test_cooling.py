@@ -9,10 +9,10 @@ from hypothesis import strategies as st
 
 from combustor.heat.sides import Film, Radiation
 from combustor.heat.wall import march
-from combustor.sizing import cooling
-from combustor.sizing.passes import bare_metal
+from combustor.sizing import cooling, film_slots, wall_sides
 from combustor.sizing.profile import liner_profile
 from combustor.sizing.size import settle
+from combustor.sizing.state import bare_metal
 
 
 @settings(derandomize=True, max_examples=60)
@@ -24,7 +24,7 @@ from combustor.sizing.size import settle
 )
 def test_slots_keep_clear_of_the_rows(length, places, width, pitch):
     bands = [(length * p - 0.5 * width, length * p + 0.5 * width) for p in places]
-    stations = cooling.slot_stations(length, bands, pitch)
+    stations = film_slots.slot_stations(length, bands, pitch)
     assert stations[0] == 0.0 or bands
     assert list(stations) == sorted(set(stations))
     for x in stations:
@@ -33,21 +33,21 @@ def test_slots_keep_clear_of_the_rows(length, places, width, pitch):
     # beside the bands the pitch holds; a band may add its own width to a panel
     for before, after in zip(stations, [*stations[1:], length], strict=True):
         inside = sum(max(0.0, min(after, e) - max(before, s)) for s, e in bands)
-        assert after - before <= pitch + inside + 2 * cooling.BAND_MARGIN + 2e-3
+        assert after - before <= pitch + inside + 2 * film_slots.BAND_MARGIN + 2e-3
 
 
 def test_slot_heights_lie_in_the_usual_range():
     for liner in (0.05, 0.3, 0.6, 1.0):
-        heights = cooling.slot_heights(liner)
+        heights = film_slots.slot_heights(liner)
         assert list(heights) == sorted(heights)
         assert heights[0] >= 1e-3 and heights[-1] <= 3e-3
         assert heights[0] >= 0.004 * min(liner, 0.75) - 1e-9
 
 
 def test_metering_holes_fit_the_slot():
-    assert cooling.metering_diameter(5e-4, 1.0, 1.3e-3) == pytest.approx(1.5e-3, abs=0.11e-3)
-    assert cooling.metering_diameter(1e-5, 1.0, 1.3e-3) == pytest.approx(1.3e-3)
-    assert cooling.metering_diameter(1e-2, 1.0, 1.4e-3) == pytest.approx(2.1e-3)
+    assert film_slots.metering_diameter(5e-4, 1.0, 1.3e-3) == pytest.approx(1.5e-3, abs=0.11e-3)
+    assert film_slots.metering_diameter(1e-5, 1.0, 1.3e-3) == pytest.approx(1.3e-3)
+    assert film_slots.metering_diameter(1e-2, 1.0, 1.4e-3) == pytest.approx(2.1e-3)
 
 
 ALONG = (
@@ -66,10 +66,10 @@ def sides(task):
     state, *_ = settle(task)
     sketch, duty = state.sketch, task.duty
     profile = liner_profile(bare_metal(sketch), state.shares, duty.overall, duty.table, 0.5)
-    gas = cooling.gas_side(
+    gas = wall_sides.gas_side(
         sketch, profile, duty.inlet, duty.fuel_flow, duty.inlet.pressure, duty.stoichiometric
     )
-    air = cooling.annulus_side(sketch, profile, duty.inlet, state.budget.front)
+    air = wall_sides.annulus_side(sketch, profile, duty.inlet, state.budget.front)
     return state, bare_metal(sketch).walls[0], gas, air
 
 
@@ -132,6 +132,6 @@ def test_sparse_metering_sets_the_least_air(task, sides):
     plan = cooling.plan_films(state.sketch, wall, gas, air, task.duty.inlet, 2000.0, flux)
     for ring, flow in zip(state.sketch.slots, plan.flow, strict=True):
         drill = ring.height
-        count = state.sketch.perimeter / (cooling.METERING_PITCH * drill)
+        count = state.sketch.perimeter / (film_slots.METERING_PITCH * drill)
         least = flux * count * np.pi / 4 * drill**2
         assert flow >= least * (1 - 1e-9)

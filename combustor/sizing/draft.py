@@ -1,0 +1,153 @@
+"""The first state, and a sketch from lengths and row plans."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+
+from combustor.sizing import film_slots
+from combustor.sizing.air_budget import AirBudget
+from combustor.sizing.diffuser import FAIRED_COEFFICIENT
+from combustor.sizing.drill import nearest_drill
+from combustor.sizing.frame import Frame, LossShares, frame_of
+from combustor.sizing.reference_area import corrected_loss
+from combustor.sizing.rows import RowPlan
+from combustor.sizing.sketch import (
+    Row,
+    RowName,
+    Sheet,
+    Sketch,
+    SlotRing,
+    VanePack,
+)
+from combustor.sizing.state import State, Task, shares_by_opening
+from combustor.sizing.swirler import HUB_RATIO, VANE_LOSS_COEFFICIENT
+
+ROW_NAMES: tuple[RowName, ...] = ("primary", "secondary", "dilution")
+DOME_DRILL_SHARE = 0.012
+_FIRST_FILM = 0.28
+_FIRST_HOT = 0.03
+_FIRST_HEIGHT = 1.5e-3
+_FIRST_SLOTS = 15
+
+
+def first_state(task: Task) -> State:
+    """Return a state to start from: usual shares and sizes, nothing solved."""
+    loss_target = task.case.targets.pressure_loss
+    assert loss_target is not None  # required of a case without metal
+    loss = _first_loss(task, loss_target)
+    shares = _first_budget(task)
+    frame = frame_of(
+        task.case, task.duty, task.section, task.casing, loss, shares.front, is_firm=False
+    )
+    hole = 0.08 * frame.liner_height
+    plans: dict[str, RowPlan] = {name: RowPlan(8, 8.0, 8.0, hole, 0.0) for name in ROW_NAMES}
+    places = [frame.liner_length * place / _FIRST_SLOTS for place in range(_FIRST_SLOTS)]
+    sketch = draw_sketch(task, frame, plans, film_slots.slot_rings(places, _FIRST_HEIGHT))
+    films = even_films(task, sketch, shares.film)
+    return State(
+        frame,
+        sketch,
+        plans,
+        shares,
+        films,
+        None,
+        shares_by_opening(shares, sketch, films),
+        None,
+        None,
+        loss,
+    )
+
+
+def draw_sketch(
+    task: Task, frame: Frame, plans: Mapping[str, RowPlan], slots: tuple[SlotRing, ...]
+) -> Sketch:
+    """Return the sketch of a frame with its rows placed and the given slots."""
+    targets, combustor = task.case.targets, task.case.combustor
+    assert combustor.inlet_annulus is not None and combustor.exit_annulus is not None
+    return Sketch(
+        section=task.section,
+        flow=combustor.flow,
+        casing_height=task.casing.height,
+        liner_height=frame.liner_height,
+        zone_ends=frame.zone_ends,
+        transition_length=combustor.transition_length,
+        exit_area=combustor.exit_annulus.area / task.section.cans,
+        diffuser=frame.diffuser,
+        inlet_area=combustor.inlet_annulus.area,
+        vane_pack=VanePack(
+            targets.swirler_vane_angle,
+            targets.swirler_vane_count,
+            targets.swirler_vane_thickness,
+            VANE_LOSS_COEFFICIENT[targets.swirler_vane_shape],
+            HUB_RATIO,
+            targets.swirler_hub_diameter,
+        ),
+        dome_hole_diameter=nearest_drill(DOME_DRILL_SHARE * frame.liner_height),
+        rows=placed(frame, plans),
+        slots=slots,
+        hole_edge=targets.hole_edge,
+        sheet=Sheet(
+            targets.sheet_thickness,
+            targets.sheet_conductivity,
+            targets.sheet_emissivity,
+            targets.casing_emissivity,
+            targets.coating_thickness,
+            targets.coating_conductivity,
+            targets.roughness,
+        ),
+        drill_step=targets.drill_step,
+    )
+
+
+def placed(frame: Frame, plans: Mapping[str, RowPlan]) -> tuple[Row, ...]:
+    """Return the rows where they stand, to whole millimetres; see `rows.ROW_POSITION`."""
+    primary_end, secondary_end, _ = frame.zone_ends
+    radius = {name: 0.5 * plan.hole_diameter for name, plan in plans.items()}
+    third = primary_end + (secondary_end - primary_end) / 3.0
+    clear = primary_end + radius["secondary"] + 2.0 * film_slots.BAND_MARGIN
+    places: dict[RowName, float] = {
+        "primary": math.floor(1e3 * (primary_end - radius["primary"])) / 1e3,
+        "secondary": math.ceil(1e3 * max(third, clear)) / 1e3,
+        "dilution": math.ceil(1e3 * (secondary_end + radius["dilution"])) / 1e3,
+    }
+    return tuple(Row(name, places[name], plans[name].count) for name in ROW_NAMES)
+
+
+def band(row: Row, plan: RowPlan) -> tuple[float, float]:
+    """Return the stretch a row takes from the slots: its holes and a margin [m]."""
+    half = 0.5 * plan.hole_diameter + film_slots.BAND_MARGIN
+    return row.station - half, row.station + half
+
+
+def even_films(task: Task, sketch: Sketch, film_share: float) -> tuple[float, ...]:
+    """Return a share of all air spread evenly over the slots [kg/s]."""
+    count = len(sketch.slots)
+    return (film_share * task.duty.inlet.mass_flow / count,) * count
+
+
+def _first_loss(task: Task, loss: float) -> LossShares:
+    inlet_annulus = task.case.combustor.inlet_annulus
+    assert inlet_annulus is not None
+    inlet = task.duty.inlet
+    head = corrected_loss(
+        inlet.mass_flow,
+        inlet.temperature,
+        inlet.pressure,
+        inlet_annulus.area,
+        inlet.gas_constant,
+    )
+    diffuser = min(FAIRED_COEFFICIENT * head, 0.5 * loss)
+    hot = _FIRST_HOT * loss
+    return LossShares(diffuser, hot, loss - diffuser)
+
+
+def _first_budget(task: Task) -> AirBudget:
+    targets = task.case.targets
+    film = _FIRST_FILM if targets.film_air is None else targets.film_air
+    primary_air = min(task.duty.overall / targets.equivalence_ratio.primary, 0.5)
+    front = min(0.16, 0.8 * primary_air)
+    row = (primary_air - front) / task.case.model.primary_jet_share
+    row = min(row, 0.9 - front - film)
+    rest = 1.0 - front - row - film - targets.leakage
+    return AirBudget(0.6 * front, 0.4 * front, row, 0.2 * rest, 0.8 * rest, film, targets.leakage)
