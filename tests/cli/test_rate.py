@@ -1,3 +1,4 @@
+import contextlib
 import csv
 import json
 import re
@@ -7,6 +8,8 @@ import pytest
 import combustor
 from combustor.case.starter import starter_text
 from combustor.cli import main
+from combustor.report.json_out import dumps
+from combustor.report.rating_json import point_document
 
 STARTER = starter_text()
 
@@ -28,16 +31,12 @@ def sized(folder):
 
 @pytest.fixture(scope="module")
 def rated(sized, folder):
-    """Document, tables and exit code of one rating of two points."""
+    """Document and exit code of one rating of two points, its tables in files."""
+    path = folder / "rated.json"
     points = ["--point", "idle", "--point", "full"]
-    document, out = folder / "rated.json", folder / "rated.txt"
-    import contextlib
-
-    codes = []
-    for path, extra in ((document, ["--json"]), (out, ["--csv", str(folder / "rating")])):
-        with path.open("w") as stream, contextlib.redirect_stdout(stream):
-            codes.append(main(["rate", str(sized), *points, *extra]))
-    return json.loads(document.read_text(), parse_constant=pytest.fail), out.read_text(), codes
+    with path.open("w") as stream, contextlib.redirect_stdout(stream):
+        code = main(["rate", str(sized), *points, "--json", "--csv", str(folder / "rating")])
+    return json.loads(path.read_text(), parse_constant=pytest.fail), code
 
 
 def test_sizing_shows_dimensions_methods_split_and_findings(capsys, folder, sized):
@@ -82,8 +81,8 @@ def test_rating_gives_what_sizing_promised(capsys, folder, rated):
 
 
 def test_the_points_asked_for_are_rated_in_the_order_of_the_case(rated):
-    document, _, codes = rated
-    assert codes == [0, 0]
+    document, code = rated
+    assert code == 0
     assert [point["name"] for point in document["points"]] == ["full", "idle"]
     assert {point["status"] for point in document["points"]} == {"burning"}
     assert document["sized"] is False
@@ -109,9 +108,14 @@ def test_a_rated_point_is_complete_and_balanced(rated):
             assert point["emissions"][key] > 0
 
 
-def test_the_terminal_shows_the_numbers_of_the_document(rated):
-    document, text, _ = rated
-    full = document["points"][0]
+@pytest.mark.parametrize("width", [100, 80])
+def test_the_terminal_shows_the_numbers_of_the_document(monkeypatch, capsys, sized, rated, width):
+    monkeypatch.setenv("COLUMNS", str(width))
+    assert main(["rate", str(sized), "--point", "full"]) == 0
+    text = capsys.readouterr().out
+    assert max(map(len, text.split("\n"))) <= width
+    assert "\x1b" not in text
+    full = rated[0]["points"][0]
     line = next(line for line in text.split("\n") if re.match(r"full +burning", line))
     assert f"{full['exit']['temperature_K']:.0f}" in line.split()
     assert f"{full['pressure_loss_percent']:.2f}" in line.split()
@@ -183,3 +187,13 @@ def test_the_same_in_python(sized):
     frame = ratings.frame()
     assert list(frame["name"]) == ["full"]
     assert frame.loc[0, "exit_temperature_K"] == pytest.approx(950 + 273.15, abs=0.5)
+
+
+def test_nothing_printed_depends_on_the_order_of_the_points(sized):
+    case = combustor.load_case(sized)
+    turned = case.model_copy(update={"points": tuple(reversed(case.points))})
+    wanted = ["full", "half"]
+    straight = [point_document(p) for p in combustor.rate(case, points=wanted).points]
+    backwards = [point_document(p) for p in combustor.rate(turned, points=wanted).points]
+    assert [point["name"] for point in straight] == wanted
+    assert dumps({"points": straight}) == dumps({"points": backwards[::-1]})
