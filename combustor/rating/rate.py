@@ -15,7 +15,7 @@ from combustor.fuel.record import Fuel
 from combustor.hardware.from_case import hardware_of
 from combustor.hardware.metal import Hardware
 from combustor.rating.assemble import rated, unrated
-from combustor.rating.couple import couple
+from combustor.rating.couple import Coupled, couple
 from combustor.rating.judge import findings_of
 from combustor.rating.operating import operating_of
 from combustor.rating.record import PointRating, Ratings
@@ -77,13 +77,33 @@ def rate_point(
     case: Case, point: Point, fuel: Fuel, gas: Gas, hardware: Hardware, settings: Settings
 ) -> PointRating:
     """Return what given metal does at one operating point."""
+    return rate_near(case, point, fuel, gas, hardware, settings)[0]
+
+
+def rate_near(
+    case: Case,
+    point: Point,
+    fuel: Fuel,
+    gas: Gas,
+    hardware: Hardware,
+    settings: Settings,
+    near: Coupled | None = None,
+) -> tuple[PointRating, Coupled]:
+    """Return a rated point and the solution behind it, started from a neighbour's if there is one.
+
+    Parameters
+    ----------
+    near : Coupled, optional
+        As in :func:`combustor.rating.couple.couple`.
+    """
     operating = operating_of(case, point, fuel, gas)
-    coupled = couple(gas, fuel, operating, hardware, settings)
+    coupled = couple(gas, fuel, operating, hardware, settings, near)
     if coupled.fire.exit is None or not coupled.convergence.converged:
         record = unrated(operating, hardware, fuel, coupled)
     else:
         record = rated(gas, operating, hardware, fuel, coupled, settings)
-    return replace(record, findings=findings_of(case, point, record, coupled, fuel, settings))
+    findings = findings_of(case, point, record, coupled, fuel, settings)
+    return replace(record, findings=findings), coupled
 
 
 def _wanted(case: Case, points: Sequence[str] | None) -> tuple[Point, ...]:
