@@ -15,6 +15,7 @@ from combustor.hardware.metal import Hardware
 from combustor.heat.wall import WallMarch
 from combustor.kinetics.chain import Chain
 from combustor.rating.fire import Fire, layout_of, light, liner_gas_of
+from combustor.rating.fuel_demand import FuelDemand
 from combustor.rating.operating import Operating
 from combustor.rating.settings import Settings
 from combustor.rating.walls import annulus_heat_of, heat_losses_of, walls_of
@@ -67,6 +68,8 @@ def couple(
     """
     layout = layout_of(hardware, settings)
     fuel_flow = operating.fuel_flow
+    wanted = operating.exit_temperature
+    demand = None if wanted is None else FuelDemand(wanted)
     warm: Chain | None = None
     losses: list[float] | None = None
     walls: tuple[WallMarch, ...] = ()
@@ -106,7 +109,7 @@ def couple(
             guess=solved,
         )
         change = _change(solved, following)
-        next_fuel = _next_fuel_flow(operating, gas, fire)
+        next_fuel = _next_fuel_flow(demand, operating, gas, fire)
         if (
             losses is not None
             and previous is not None
@@ -161,13 +164,13 @@ def _temperature_met(operating: Operating, fire: Fire, settings: Settings) -> bo
     return miss < settings.temperature_tolerance
 
 
-def _next_fuel_flow(operating: Operating, gas: Gas, fire: Fire) -> float:
+def _next_fuel_flow(demand: FuelDemand | None, operating: Operating, gas: Gas, fire: Fire) -> float:
     """Return the fuel flow that closes the gap to the exit temperature asked for."""
-    if operating.exit_temperature is None:
+    if demand is None:
         return fire.fuel_flow
     assert fire.exit is not None
     state = fire.exit
     capacity = gas.heat_capacity(state.temperature, state.pressure, state.mass_fractions)
-    gap = (operating.exit_temperature - state.temperature) * capacity
-    warming = capacity * operating.exit_temperature
-    return fire.fuel_flow + fire.exit_flow * gap / (operating.lower_heating_value - warming)
+    released = operating.lower_heating_value - capacity * demand.target
+    slope = released / (fire.exit_flow * capacity)
+    return demand.next_flow(fire.fuel_flow, state.temperature, slope)

@@ -1,0 +1,56 @@
+"""The fuel flow that meets an exit temperature, found while the other unknowns settle."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+SHALLOWEST, STEEPEST = 0.5, 20.0  # slope of exit temperature over that of complete combustion
+
+
+@dataclass
+class FuelDemand:
+    """Safeguarded secant on exit temperature against fuel flow.
+
+    Near partial blow-out a little more fuel also burns better, so the exit temperature rises
+    several times faster than complete combustion would have it; a fixed slope then circles.
+
+    Parameters
+    ----------
+    target : float
+        Exit temperature wanted [K]
+    tried : list of (float, float)
+        Fuel flow [kg/s] and the gap to the target it left [K], in order.
+    """
+
+    target: float
+    tried: list[tuple[float, float]] = field(default_factory=list)
+
+    def next_flow(self, flow: float, temperature: float, slope: float) -> float:
+        """Return the fuel flow to try next.
+
+        Parameters
+        ----------
+        flow : float
+            Fuel flow just tried [kg/s]
+        temperature : float
+            Exit temperature it gave [K]
+        slope : float
+            Rise of the exit temperature with fuel flow at complete combustion [K s/kg]
+        """
+        gap = self.target - temperature
+        if self.tried:
+            last_flow, last_gap = self.tried[-1]
+            if abs(flow - last_flow) > 1e-9 * flow:
+                seen = (last_gap - gap) / (flow - last_flow)
+                if SHALLOWEST * slope < seen < STEEPEST * slope:
+                    slope = seen
+        self.tried.append((flow, gap))
+        return self._inside(flow + gap / slope)
+
+    def _inside(self, wanted: float) -> float:
+        """Keep the next flow between the nearest flows known to be too small and too large."""
+        low = max((flow for flow, gap in self.tried[-6:] if gap > 0.0), default=0.0)
+        high = min((flow for flow, gap in self.tried[-6:] if gap <= 0.0), default=float("inf"))
+        if low >= high or low < wanted < high:
+            return wanted
+        return 0.5 * (low + high) if high < float("inf") else wanted
