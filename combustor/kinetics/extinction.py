@@ -9,7 +9,8 @@ from numpy.typing import NDArray
 
 from combustor.base.method import Method
 from combustor.fuel.gas import Gas, GasState
-from combustor.kinetics.branch import descend, follow, hold
+from combustor.kinetics.branch import hold
+from combustor.kinetics.continuation import descend, follow
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
 from combustor.kinetics.stirred import stirred_zone
 from combustor.kinetics.zone import Zone, ZoneState

@@ -21,7 +21,9 @@ RELATIVE_TOLERANCE = 1e-7  # last Newton step, per species
 ABSOLUTE_TOLERANCE = 1e-15  # kmol/kg, about 3e-14 in mass fraction
 DEEPEST_DIP = 100.0 * ABSOLUTE_TOLERANCE  # below zero, allowed to an iterate
 KEPT_CONTRACTION = 0.1  # a factor is kept while steps shrink at least by this
-HOPELESS = 1e40
+HOPELESS = 1e40  # step size beyond which an iterate is given up at once
+# A run whose steps are still this large after this many iterations is not going to settle.
+WANDERING, WANDERED = 10, 1e7
 
 
 @dataclass(frozen=True, eq=False)
@@ -239,11 +241,13 @@ def newton(
     run = _Run(zone, start, inverse_step)
     size = np.inf
     count = 0
-    while count < iterations and (count == 0 or size < np.inf):
+    while count < iterations and (count < WANDERING or size < WANDERED):
         size = run.advance()
         count += 1
         if size <= tolerance:
             return Outcome(run.finish(), True, size, count, run.stable)
+        if not size < np.inf:
+            break
     return Outcome(ZoneState(run.moles, run.temperatures, run.rate), False, size, count, False)
 
 

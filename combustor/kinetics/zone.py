@@ -184,8 +184,12 @@ class ZoneState:
         [K]
     rate : float
         Inverse residence time of one pass [1/s]
+    margins : ndarray or None
+        Of streams that cannot burn: where their burning branch ends, in residence times of
+        this state. Zero for burning streams; None where all burn or nobody asked [-]
     """
 
     moles: Array
     temperatures: Array
     rate: float
+    margins: Array | None = None
