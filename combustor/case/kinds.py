@@ -6,12 +6,13 @@ unusual: recuperated, reheat and micro machines lie inside. All windows are judg
 
 from __future__ import annotations
 
+import datetime
 import math
 from typing import Annotated
 
 from pydantic import BeforeValidator
 
-from combustor.case.quantity import Quantity, whole, word
+from combustor.case.quantity import Quantity, calendar_day, whole, word
 
 DEG = math.pi / 180.0
 
@@ -96,6 +97,12 @@ ANNULUS_VELOCITY = Quantity("annulus velocity", "velocity", 1.0, 250.0, '"45 m/s
 VANE_ANGLE = Quantity("vane angle", "angle", 0.0, 85 * DEG, '"45 deg"', "0 to 85 deg")
 CONDUCTIVITY = Quantity("conductivity", "conductivity", 1e-2, 500.0, '"26 W/m/K"', "0.01 to 500")
 
+HOURS_A_YEAR = Quantity("hours a year", "ratio", 0.0, 8784.0, "1500", "0 to 8784 h")
+EFFICIENCY = _fraction("efficiency", 0.01, 1.0, '"38 %"', "1 to 100 %")
+FUEL_SHARE = _fraction("share of the fuel's mass", 0.0, 0.2, '"50 ppm"', "0 to 20 %")
+OVERALL_PRESSURE_RATIO = Quantity("overall pressure ratio", "ratio", 1.0, 200.0, "30", "1 to 200")
+SCATTER = Quantity("scatter", "ratio", 0.01, 3.0, "0.35", "0.01 to 3, of the logarithm")
+
 AirFlow = Annotated[float, BeforeValidator(AIR_FLOW.validate)]
 FuelFlow = Annotated[float, BeforeValidator(FUEL_FLOW.validate)]
 WaterFlow = Annotated[float, BeforeValidator(WATER_FLOW.validate)]
@@ -153,6 +160,13 @@ Diameters = Annotated[tuple[float, ...], BeforeValidator(DIAMETER.validate_list)
 InnerDiameters = Annotated[tuple[float, ...], BeforeValidator(INNER_DIAMETER.validate_list)]
 Lengths = Annotated[tuple[float, ...], BeforeValidator(LENGTH.validate_list)]
 Areas = Annotated[tuple[float, ...], BeforeValidator(AREA.validate_list)]
+
+HoursAYear = Annotated[float, BeforeValidator(HOURS_A_YEAR.validate)]
+Efficiency = Annotated[float, BeforeValidator(EFFICIENCY.validate)]
+FuelShare = Annotated[float, BeforeValidator(FUEL_SHARE.validate)]
+OverallPressureRatio = Annotated[float, BeforeValidator(OVERALL_PRESSURE_RATIO.validate)]
+Scatter = Annotated[float, BeforeValidator(SCATTER.validate)]
+Date = Annotated[datetime.date, BeforeValidator(calendar_day)]
 
 Cans = Annotated[int, BeforeValidator(whole("number of cans", 1, 100))]
 Count = Annotated[int, BeforeValidator(whole("count", 0, 100_000))]

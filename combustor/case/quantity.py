@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import datetime
 import math
 import re
 from collections.abc import Callable
@@ -180,6 +181,18 @@ def whole(name: str, low: int, high: int) -> Callable[[object], int]:
         return value
 
     return validate
+
+
+def calendar_day(value: object) -> datetime.date:
+    """Return a day: a TOML date, or the same in quotes."""
+    if isinstance(value, datetime.date) and not isinstance(value, datetime.datetime):
+        return value
+    if isinstance(value, str):
+        try:
+            return datetime.date.fromisoformat(value)
+        except ValueError:
+            pass
+    raise refusal("not a day", "write 2015-06-30")
 
 
 def word(name: str, longest: int = 60, forbidden: str = "") -> Callable[[object], str]:

@@ -176,15 +176,50 @@ class Model(Table):
     primary_jet_share: k.Share = 0.5
 
 
+class Scatter(Table):
+    """Standard deviation of ln(measured / predicted), where the user knows it better."""
+
+    NOx: k.Scatter | None = None
+    CO: k.Scatter | None = None
+    UHC: k.Scatter | None = None
+    N2O: k.Scatter | None = None
+    NH3: k.Scatter | None = None
+
+
 class Rules(Table):
-    """``[rules]``: which emission rules bind, and the facts they need."""
+    """``[rules]``: which emission rules bind, and the facts they need.
+
+    ``names``: shipped sets or paths of the user's own files; ``heat_input`` W on
+    ``heat_input_basis``; dates of construction (``built``), permit and type certificate;
+    ``hours`` operated a year; efficiencies on LHV at ISO base load; ``fuel_sulfur`` and
+    ``fuel_nitrogen`` as shares of the fuel's mass; ``confirmed``: "SET/ROW: where it was read".
+    """
 
     names: tuple[k.Text, ...] = ()
+    country: k.Name | None = None
     heat_input: k.HeatInput | None = None
-    unit_state: Literal["new", "existing"] | None = None
+    heat_input_basis: Literal["LHV", "HHV"] | None = None
+    rated_output: k.Output | None = None
+    unit_state: Literal["new", "existing", "modified"] | None = None
     use: k.Text | None = None
+    cycle: Literal["simple", "combined"] | None = None
+    duty: Literal["normal", "emergency", "research", "temporary"] | None = None
+    site: Literal["continental", "arctic", "offshore", "non-continental"] | None = None
+    aftertreatment: Literal["none", "scr", "oxidation"] | None = None
+    built: k.Date | None = None
+    permitted: k.Date | None = None
+    type_date: k.Date | None = None
+    hours: k.HoursAYear | None = None
+    capacity_factor: k.Share | None = None
+    efficiency: k.Efficiency | None = None
+    total_efficiency: k.Efficiency | None = None
+    fuel_class: Literal["natural-gas", "other-gas", "gas-oil", "other-liquid"] | None = None
+    fuel_sulfur: k.FuelShare | None = None
+    fuel_nitrogen: k.FuelShare | None = None
     rated_thrust: k.Thrust | None = None
+    pressure_ratio: k.OverallPressureRatio | None = None
     engines_tested: k.Engines | None = None
+    scatter: Scatter = Field(default_factory=Scatter)
     confirmed: tuple[k.Text, ...] = ()
 
 

@@ -29,7 +29,8 @@ ACID_DEW_POINT = Method(
 ACID_DEW_POINT_OKKES = Method(
     key="acid-dew-point-okkes",
     quantity="sulfuric acid dew point",
-    source="Okkes 1987: t = 203.25 + 27.6 lg p_H2O + 10.83 lg p_SO3 + 1.06 (lg p_SO3 + 8)^2.19, atm",
+    source="Okkes 1987: t = 203.25 + 27.6 lg p_H2O + 10.83 lg p_SO3 + "
+    "1.06 (lg p_SO3 + 8)^2.19, atm",
     reading="as given in",
     scatter="a few K",
 )

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from combustor.emissions import bases
 from combustor.emissions.unburnt import has_reference, heat_left, methane_equivalent
@@ -34,6 +34,13 @@ class Emissions:
         1 - (CO, H2, NH3 and hydrocarbons as CH4, each at its lower heating value) / fuel's.
     no_share : float or None
         NO / (NO + NO2) by mole; None without NOx.
+    wet : mapping of str to float
+        Mole fractions in the gas as it flows: NO, NO2, CO, UHC (as CH4 by carbon), N2O, NH3,
+        CO2, O2, H2O, those that the mechanism holds.
+    gas_flow, fuel_flow : float
+        Wet gas and fuel, kg/s.
+    mean_molar_mass : float or None
+        Of the wet gas, kg/mol.
     """
 
     ei_nox: float | None
@@ -51,6 +58,10 @@ class Emissions:
     combustion_efficiency: float | None
     no_share: float | None
     nh3_dry_15: float | None = None
+    wet: Mapping[str, float] = field(default_factory=dict)
+    gas_flow: float | None = None
+    fuel_flow: float | None = None
+    mean_molar_mass: float | None = None
 
 
 def from_exhaust(
@@ -127,6 +138,10 @@ def from_exhaust(
         combustion_efficiency=efficiency,
         no_share=gas["NO"] / nox if nox else None,
         nh3_dry_15=dry_15(gas.get("NH3")),
+        wet=_as_found(gas, methane),
+        gas_flow=gas_flow,
+        fuel_flow=fuel_flow,
+        mean_molar_mass=mean_molar_mass,
     )
 
 
@@ -154,6 +169,11 @@ def from_gas(
         fuel.lower_heating_value,
         {species: atoms_in(gas, species) for species in gas.species_names},
     )
+
+
+def _as_found(gas: Mapping[str, float], methane: float) -> dict[str, float]:
+    species = ("NO", "NO2", "CO", "N2O", "NH3", "CO2", "O2", "H2O")
+    return {**{name: gas[name] for name in species if name in gas}, "UHC": methane}
 
 
 def _mass(fraction: float | None, molar_mass: float) -> float | None:
