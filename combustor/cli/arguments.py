@@ -117,6 +117,44 @@ def _rate(command: _Parser) -> None:
     _tables(command)
 
 
+def _sweep(command: _Parser) -> None:
+    command.description = (
+        f"{command.description}\nKEY is a dotted path into the case: targets.pressure_loss, "
+        "points.NAME.KEY, points.*.KEY, hardware.openings.NAME.diameter. START and STOP are SI, "
+        "or both carry a unit. The same command goes on where it was stopped."
+    )
+    command.add_argument("case", metavar="CASE", help="case file")
+    command.add_argument(
+        "--vary",
+        metavar="KEY=START:STOP:COUNT",
+        action="append",
+        required=True,
+        help="entry to vary and its values; may be given twice",
+    )
+    command.add_argument(
+        "--point", metavar="NAME", action="append", help="this point only; may be repeated"
+    )
+    command.add_argument(
+        "--results",
+        metavar="FILE",
+        help="file that ratings are appended to as they finish and taken up from (default: "
+        "named after the case and this sweep, in the current folder)",
+    )
+    command.add_argument(
+        "--anew", action="store_true", help="begin the results file anew, whatever it holds"
+    )
+    command.add_argument("--workers", metavar="N", help="processes (default: one for each core)")
+    command.add_argument(
+        "--nox-limit", metavar="X", help='dry, 15 %% O2, e.g. "25 ppm" (default: the case\'s)'
+    )
+    command.add_argument("--co-limit", metavar="X", help="as --nox-limit, for CO")
+    command.add_argument(
+        "--picture", metavar="FILE", help="also draw a .png, .svg or .pdf (needs matplotlib)"
+    )
+    command.add_argument("--ascii", action="store_true", help="plain ASCII tables and plots")
+    _tables(command)
+
+
 def _flame(command: _Parser) -> None:
     command.description = f"{command.description}\n{_QUANTITIES}"
     command.add_argument("fuel", metavar="FUEL", help="catalogue name, or a blend by volume")
@@ -163,6 +201,16 @@ _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ..
             "combustor rate sized.toml --fuel natural-gas+30%hydrogen --csv tables",
         ),
         _rate,
+    ),
+    (
+        "sweep",
+        "trends: vary one or two entries of a case at all its points, in parallel, resumable",
+        (
+            'combustor sweep sized.toml --vary "hardware.openings.dilution.diameter=40 mm:50 mm:6"',
+            "combustor sweep my.toml --vary targets.equivalence_ratio.primary=0.7:1.1:9 "
+            '--nox-limit "150 ppm" --co-limit "80 ppm"',
+        ),
+        _sweep,
     ),
     (
         "flame",

@@ -3,26 +3,14 @@
 from __future__ import annotations
 
 import argparse
-import sys
-from collections.abc import Callable, Iterable, Sequence
-from dataclasses import dataclass
+from collections.abc import Callable
 from pathlib import Path
 
 import combustor
 from combustor.base.errors import EXIT_GOOD, EXIT_LIMIT
-from combustor.report.csv_out import check_free, write_csv
-from combustor.report.document import Block, Table
+from combustor.cli.answer import Answer, check_csv, set_report, write_tables
+from combustor.report.csv_out import check_free
 from combustor.report.json_out import dumps
-from combustor.report.terminal import Page, render
-
-
-@dataclass(frozen=True)
-class Answer:
-    """Text for stdout, the exit code, and lines for stderr."""
-
-    text: str
-    code: int = EXIT_GOOD
-    notes: tuple[str, ...] = ()
 
 
 def answer(arguments: argparse.Namespace) -> Answer:
@@ -54,12 +42,12 @@ def size(arguments: argparse.Namespace) -> Answer:
     from combustor.report import sizing_tables as report
 
     case = combustor.load_case(arguments.case)
-    _check_csv(arguments, report.SIZING_TABLES)
+    check_csv(arguments, report.SIZING_TABLES)
     if arguments.output:
         check_free([Path(arguments.output)], arguments.force)
     fuel = combustor.fuel_of(case)
     design = combustor.size(case)
-    notes = _write_csv(arguments, report.sizing_data(design, case))
+    notes = write_tables(arguments, report.sizing_data(design, case))
     if arguments.output:
         table = table_of(design.hardware, case.combustor)
         write_case(arguments.output, case, table, force=arguments.force)
@@ -70,7 +58,7 @@ def size(arguments: argparse.Namespace) -> Answer:
     text = (
         f"{dumps(report.design_document(design, case, combustor.__version__))}\n"
         if arguments.json
-        else _set(report.sizing_report(design, case, fuel.cautions))
+        else set_report(report.sizing_report(design, case, fuel.cautions))
     )
     return Answer(text, EXIT_LIMIT if limit else EXIT_GOOD, notes)
 
@@ -83,15 +71,15 @@ def rate(arguments: argparse.Namespace) -> Answer:
     from combustor.report.rating_tables import rating_report
 
     case = combustor.load_case(arguments.case)
-    _check_csv(arguments, RATING_TABLES)
+    check_csv(arguments, RATING_TABLES)
     ratings = combustor.rate(case, fuel=arguments.fuel, points=arguments.point)
-    notes = _write_csv(arguments, rating_data(ratings))
+    notes = write_tables(arguments, rating_data(ratings))
     levels = [level_of(point) for point in ratings.points]
     levels += [finding.level for finding in ratings.findings]
     text = (
         f"{dumps(ratings_document(ratings, combustor.__version__))}\n"
         if arguments.json
-        else _set(rating_report(ratings))
+        else set_report(rating_report(ratings))
     )
     return Answer(text, EXIT_LIMIT if "act" in levels else EXIT_GOOD, notes)
 
@@ -102,14 +90,14 @@ def flame(arguments: argparse.Namespace) -> Answer:
     from combustor.report import flame_tables as report
 
     given = flame_conditions(arguments)
-    _check_csv(arguments, report.FLAME_TABLES)
+    check_csv(arguments, report.FLAME_TABLES)
     fuel = combustor.find_fuel(arguments.fuel, arguments.mechanism)
     result = combustor.flame(fuel, **given)
-    notes = _write_csv(arguments, report.flame_data(result))
+    notes = write_tables(arguments, report.flame_data(result))
     text = (
         f"{dumps(report.flame_document(result))}\n"
         if arguments.json
-        else _set(report.flame_report(result, fuel))
+        else set_report(report.flame_report(result, fuel))
     )
     good = result.stirred is None or result.stirred.status == "burning"
     return Answer(text, EXIT_GOOD if good else EXIT_LIMIT, notes)
@@ -120,39 +108,31 @@ def fuels(arguments: argparse.Namespace) -> Answer:
     from combustor.fuel import catalogue
     from combustor.report import fuel_tables as report
 
-    _check_csv(arguments, report.FUEL_TABLES)
+    check_csv(arguments, report.FUEL_TABLES)
     names = catalogue.names() if arguments.name is None else (arguments.name,)
     found = tuple(catalogue.find(name) for name in names)
-    notes = _write_csv(arguments, report.fuels_data(found))
+    notes = write_tables(arguments, report.fuels_data(found))
     if arguments.json:
         text = f"{dumps(report.fuels_document(found, combustor.__version__))}\n"
     elif arguments.name is None:
-        text = _set([report.fuels_table(found)])
+        text = set_report([report.fuels_table(found)])
     else:
-        text = _set(report.fuel_report(found[0]))
+        text = set_report(report.fuel_report(found[0]))
     return Answer(text, EXIT_GOOD, notes)
+
+
+def sweep(arguments: argparse.Namespace) -> Answer:
+    """Vary entries of a case and show the trends."""
+    from combustor.cli.sweep import sweep as sweep_case
+
+    return sweep_case(arguments)
 
 
 _COMMANDS: dict[str, Callable[[argparse.Namespace], Answer]] = {
     "new": new,
     "size": size,
     "rate": rate,
+    "sweep": sweep,
     "flame": flame,
     "fuels": fuels,
 }
-
-
-def _set(blocks: Iterable[Block]) -> str:
-    return render(blocks, Page.of(sys.stdout)).lstrip("\n")
-
-
-def _check_csv(arguments: argparse.Namespace, names: Sequence[str]) -> None:
-    if arguments.csv is not None:
-        check_free((Path(arguments.csv) / f"{name}.csv" for name in names), arguments.force)
-
-
-def _write_csv(arguments: argparse.Namespace, tables: Iterable[Table]) -> tuple[str, ...]:
-    if arguments.csv is None:
-        return ()
-    paths = write_csv(tables, Path(arguments.csv), arguments.force)
-    return tuple(f"wrote {path}" for path in paths)

@@ -67,4 +67,38 @@ class Table:
         return (row(self.fields, record) for record in self.records)
 
 
-Block = Heading | Prose | Facts | Table
+@dataclass(frozen=True)
+class Curve:
+    """One line of a plot: what it is called, and its points; None breaks it."""
+
+    name: str
+    points: tuple[tuple[float, float | None], ...]
+
+
+@dataclass(frozen=True)
+class Plot:
+    """Curves in characters, each with a letter of its own, at most 80 columns wide.
+
+    Parameters
+    ----------
+    title : str
+    across, up : str
+        What the axes show, unit included.
+    curves : tuple of Curve
+    log_across, log_up : bool
+        Whether an axis is logarithmic; values that are not positive are left out then.
+    limit_across, limit_up : float or None
+        A limit drawn as a line.
+    """
+
+    title: str
+    across: str
+    up: str
+    curves: tuple[Curve, ...]
+    log_across: bool = False
+    log_up: bool = False
+    limit_across: float | None = None
+    limit_up: float | None = None
+
+
+Block = Heading | Prose | Facts | Table | Plot

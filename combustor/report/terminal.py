@@ -15,9 +15,10 @@ from rich.padding import Padding
 from rich.table import Table as RichTable
 from rich.text import Text
 
-from combustor.report.document import Block, Facts, Heading, Prose, Table
+from combustor.report.document import Block, Facts, Heading, Plot, Prose, Table
 from combustor.report.field import printable
 from combustor.report.layout import Part, fit
+from combustor.report.plot import drawn_plot
 from combustor.report.theme import STYLES
 
 WIDEST = 100
@@ -81,6 +82,11 @@ def _draw(console: Console, block: Block, page: Page) -> None:
         console.print(Text(printable(block.text), overflow="fold"))
     elif isinstance(block, Facts):
         console.print(_facts(block))
+    elif isinstance(block, Plot):
+        console.print()
+        console.print(Text(printable(block.title), style=STYLES["title"], overflow="fold"))
+        for line in drawn_plot(block, page.width, page.ascii_only):
+            console.print(Text(line), no_wrap=True, overflow="crop")
     else:
         _draw_table(console, block, page)
 

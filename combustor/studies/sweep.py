@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import hashlib
+import json
 import os
 from collections.abc import Sequence
 from concurrent.futures import Executor
@@ -107,6 +109,19 @@ def sweep(
         What was finished is kept.
     """
     laid = plan(case, axes, points)
+    return carried_out(laid, results, replace, executor, workers, report, describe)
+
+
+def carried_out(
+    laid: Plan,
+    results: str | os.PathLike[str] | None = None,
+    replace: bool = False,
+    executor: Executor | None = None,
+    workers: int | None = None,
+    report: Report | None = None,
+    describe: Describe | None = None,
+) -> Sweep:
+    """Solve a plan that is laid out already; otherwise as :func:`sweep`."""
     processes = core_count() if workers is None else max(1, workers)
     if results is None:
         memory = InMemory()
@@ -116,6 +131,12 @@ def sweep(
         taken_up = len(labels(file.results))
         solve(laid, file, describe, executor, processes, report)
         return _finished(laid, file.results, taken_up)
+
+
+def results_name(laid: Plan, stem: str, documents: bool) -> str:
+    """Return the file name that this sweep, and no other, keeps its results under."""
+    said = json.dumps(header_of(laid, documents), sort_keys=True)
+    return f"{stem}.{hashlib.sha256(said.encode()).hexdigest()[:8]}.sweep.jsonl"
 
 
 def header_of(laid: Plan, documents: bool) -> dict[str, object]:

@@ -184,6 +184,7 @@ class _Run:
         self.describe = describe
         self.report = report
         self.begun = time.monotonic()
+        self.first: tuple[float, int] | None = None
         rows = {row.label for row in plan.rows}
         known = {(r.row, r.point) for r in store.results if r.row in rows}
         self.resumed = len(known)
@@ -239,14 +240,23 @@ class _Run:
         if self.report is None:
             return
         elapsed = time.monotonic() - self.begun
-        fresh = self.finished - self.resumed
         left = self.plan.ratings - self.finished
-        remaining = 0.0 if left == 0 else elapsed / fresh * left if fresh else None
+        remaining = 0.0 if left == 0 else self._remaining(elapsed, left)
         self.report(
             Progress(
                 self.plan.ratings, self.finished, self.resumed, self.failed, elapsed, remaining
             )
         )
+
+    def _remaining(self, elapsed: float, left: int) -> float | None:
+        """Return the time left at the pace since the first result: starting up counts once."""
+        fresh = self.finished - self.resumed
+        if fresh < 1:
+            return None
+        if self.first is None:
+            self.first = (elapsed, fresh)
+        since, more = elapsed - self.first[0], fresh - self.first[1]
+        return since / more * left if more else elapsed / fresh * left
 
     def _begin(self) -> None:
         """Make ready what waits for nothing: anchors, and metal where there is none."""

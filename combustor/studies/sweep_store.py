@@ -228,7 +228,7 @@ def _check_header(first: bytes, header: Mapping[str, Any], path: Path) -> None:
     raise InputError(
         Problem(
             f"holds the results of another sweep: {', '.join(said) or words['digest']}",
-            "name another file, or --force to begin it anew",
+            "name another file, or ask for it to be begun anew",
             file=str(path),
         )
     )

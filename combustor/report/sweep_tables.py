@@ -1,0 +1,364 @@
+"""The report of a sweep: trends, plots, the NOx-CO window, sensitivities, failures."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from typing import Any
+
+import numpy as np
+
+from combustor.report import theme
+from combustor.report.document import Block, Curve, Facts, Heading, Plot, Prose, Table
+from combustor.report.field import Field
+from combustor.report.sweep_fields import OUTCOME, axis_field, axis_words
+from combustor.studies.sweep import Sweep
+from combustor.studies.sweep_axis import Axis
+from combustor.studies.sweep_outcome import Outcome
+from combustor.studies.sweep_trends import Sensitivity, Window
+
+MOST_LINES = 12  # of a trend on the terminal; the files hold all
+MOST_FAILURES = 8
+MOST_CURVES = 6
+_TREND = (
+    "nox",
+    "co",
+    "exit_temperature",
+    "primary_temperature",
+    "primary_equivalence_ratio",
+    "pressure_loss",
+    "combustion_efficiency",
+    "wall_peak",
+    "blowout_margin",
+)
+
+
+@dataclass(frozen=True)
+class Limits:
+    """What NOx and CO may be: mole fractions, dry, 15 % O2; None where nothing is asked."""
+
+    nox: float | None = None
+    co: float | None = None
+
+    @property
+    def words(self) -> str:
+        """Both in words."""
+        pairs = (("NOx", self.nox), ("CO", self.co))
+        return ", ".join(f"{n} {1e6 * v:.4g} ppm" for n, v in pairs if v is not None)
+
+
+def sweep_report(sweep: Sweep, limits: Limits, file: str) -> tuple[Block, ...]:
+    """Return the whole report."""
+    blocks: list[Block] = [
+        Heading(f"{sweep.plan.case.title}: sweep"),
+        Facts(tuple(_facts(sweep, file))),
+        *_remarks(sweep),
+    ]
+    for point in sweep.plan.points:
+        blocks.append(trend_table(sweep, point))
+        blocks += _cut(sweep, point)
+    blocks += plots(sweep, limits)
+    blocks += window_blocks(sweep, limits)
+    blocks += sensitivity_blocks(sweep.sensitivities)
+    blocks += failure_blocks(sweep)
+    return tuple(blocks)
+
+
+def record_of(sweep: Sweep, indices: Sequence[int], point: str, outcome: Outcome) -> dict[str, Any]:
+    """Return one line of a table of outcomes."""
+    places = {
+        f"axis{number}": axis.shown[index]
+        for number, (axis, index) in enumerate(zip(sweep.plan.axes, indices, strict=True))
+    }
+    return {
+        **places,
+        "point": point,
+        "outcome": outcome,
+        "status": theme.status(outcome.status),
+        "verdict": theme.verdict(outcome.level),
+    }
+
+
+def trend_table(sweep: Sweep, point: str) -> Table:
+    """Return the trend at one operating point, thinned out to a page."""
+    records = [
+        record_of(sweep, row.indices, point, result.outcome)
+        for row, result in sweep.grid
+        if result.point == point
+    ]
+    shown = [records[i] for i in _digest(len(records))]
+    axes = sweep.plan.axes
+    names = [n for n in _TREND if any(getattr(r["outcome"], n) is not None for r in shown)]
+    columns = (
+        *(axis_field(axis, number) for number, axis in enumerate(axes)),
+        Field("status", "status"),
+        *(OUTCOME[name].beneath("outcome") for name in names),
+        Field("verdict", "verdict"),
+    )
+    marks = {i: r["outcome"].level for i, r in enumerate(shown) if r["outcome"].level != "ok"}
+    title = f"Trend at {point} (NOx, CO: dry, 15 % O2)"
+    return Table("trend", title, columns, tuple(shown), marks, lead=len(axes))
+
+
+def plots(sweep: Sweep, limits: Limits) -> list[Plot]:
+    """Return NOx and CO over the last axis, and NOx against CO."""
+    last = sweep.plan.axes[-1]
+    along = axis_words(last)
+    words = {"nox": "NOx, ppm dry 15 % O2", "co": "CO, ppm dry 15 % O2"}
+    over: list[Plot] = []
+    if len(last.values) > 1:
+        over = [
+            Plot(
+                f"{title} along the sweep{_where(sweep)}",
+                along,
+                words[name],
+                _curves(sweep, name),
+                log_up=True,
+                limit_up=None if limit is None else 1e6 * limit,
+            )
+            for title, name, limit in (("NOx", "nox", limits.nox), ("CO", "co", limits.co))
+        ]
+    trade = Plot(
+        f"CO against NOx{_where(sweep)}",
+        words["nox"],
+        words["co"],
+        _trade_curves(sweep),
+        log_across=True,
+        log_up=True,
+        limit_across=None if limits.nox is None else 1e6 * limits.nox,
+        limit_up=None if limits.co is None else 1e6 * limits.co,
+    )
+    return [*over, trade]
+
+
+def window_blocks(sweep: Sweep, limits: Limits) -> list[Block]:
+    """Return where both limits hold."""
+    found = sweep.windows(limits.nox, limits.co)
+    if not found:
+        return [
+            Prose(
+                "No limit on NOx or CO is stated: give --nox-limit and --co-limit, or "
+                "[targets] emissions, to see the window in which both hold."
+            )
+        ]
+    last = sweep.plan.axes[-1]
+    records = tuple(line for window in found for line in window_lines(window))
+    marks = {i: "act" for i, r in enumerate(records) if r["low"] is None}
+    held = (axis_field(sweep.plan.axes[0], 0),) if len(sweep.plan.axes) == 2 else ()
+    columns = (
+        *held,
+        Field("point", "point"),
+        Field("words", "limits"),
+        Field("low", "from", unit=last.unit, scale=1.0, figures=5),
+        Field("low_by", "below it"),
+        Field("high", "to", unit=last.unit, scale=1.0, figures=5),
+        Field("high_by", "above it"),
+    )
+    title = f"Window of {last.key} with {limits.words} (dry, 15 % O2)"
+    lead = 1 + len(held)
+    return [Table("window", title, columns, records, marks, lead=lead)]
+
+
+def window_lines(window: Window) -> list[dict[str, Any]]:
+    """Return one line a span; one line that says so where there is none."""
+    base = {"axis0": window.held, "point": window.point or "all points"}
+    if not window.spans:
+        nothing = {"low": None, "low_by": "", "high": None, "high_by": ""}
+        return [{**base, "words": "! never hold", **nothing}]
+    return [
+        {
+            **base,
+            "words": "+ hold",
+            "low": low.value,
+            "low_by": low.by,
+            "high": high.value,
+            "high_by": high.by,
+        }
+        for low, high in window.spans
+    ]
+
+
+_RELATIVE = ("nox", "co", "primary_air", "primary_equivalence_ratio")
+_ABSOLUTE = ("exit_temperature", "primary_temperature", "wall_peak", "pressure_loss")
+
+
+def sensitivity_blocks(found: Sequence[Sensitivity]) -> list[Block]:
+    """Return what one percent of each entry does, at the case as it stands."""
+    if not found:
+        return [
+            Prose(
+                "No sensitivities: the case has no value of these entries to step about, or "
+                "cannot take a step to either side."
+            )
+        ]
+    columns = (
+        Field("key", "entry"),
+        Field("point", "point"),
+        *(
+            Field(f"relative_{n}", OUTCOME[n].label, f"relative.{n}", "%", 1.0, decimals=2)
+            for n in _RELATIVE
+        ),
+        *(_absolute(name) for name in _ABSOLUTE),
+    )
+    below = tuple(f"no result: {s.reason}" if s.reason else "" for s in found)
+    title = "Change per +1 % of each entry, about the case (temperatures: of kelvin)"
+    table = Table(
+        "sensitivities",
+        title,
+        columns,
+        tuple(found),
+        below=below if any(below) else (),
+        lead=2,
+    )
+    return [table]
+
+
+def _absolute(name: str) -> Field:
+    field = OUTCOME[name]
+    scale = (field.scale or 1.0) * field.shown
+    unit = "% pts" if field.unit == "%" else field.unit
+    return Field(f"change_{name}", field.label, f"change.{name}", unit, scale, decimals=3)
+
+
+def failure_blocks(sweep: Sweep) -> list[Block]:
+    """Return what has no result, with the reason."""
+    failures = [(row, r) for row, r in sweep.grid if not r.outcome.burning]
+    if not failures:
+        return []
+    records = tuple(
+        record_of(sweep, row.indices, result.point, result.outcome)
+        for row, result in failures[:MOST_FAILURES]
+    )
+    columns = (
+        *(axis_field(axis, number) for number, axis in enumerate(sweep.plan.axes)),
+        Field("point", "point"),
+        Field("status", "status"),
+    )
+    below = tuple(record["outcome"].reason for record in records)
+    marks = dict.fromkeys(range(len(records)), "act")
+    lead = len(sweep.plan.axes) + 1
+    blocks: list[Block] = [Table("failures", "No result", columns, records, marks, below, lead)]
+    if len(failures) > MOST_FAILURES:
+        blocks.append(Prose(f"... and {len(failures) - MOST_FAILURES} more; --csv holds all."))
+    return blocks
+
+
+def _facts(sweep: Sweep, file: str) -> list[tuple[str, str]]:
+    plan = sweep.plan
+    facts = [("varied", _span(axis)) for axis in plan.axes]
+    grid = len(sweep.grid)
+    about = len(sweep.results) - grid
+    failed = sum(not r.outcome.burning for r in sweep.results)
+    words = f"{len(sweep.results)}: {grid} of the sweep"
+    words += f", {about} about the case" if about else ""
+    words += f"; {sweep.resumed} were done before" if sweep.resumed else ""
+    words += f"; {failed} without a result" if failed else ""
+    return [*facts, ("points", ", ".join(plan.points)), ("ratings", words), ("kept in", file)]
+
+
+def _span(axis: Axis) -> str:
+    unit = f" {axis.unit}" if axis.unit else ""
+    words = f"{axis.key}: {axis.shown[0]:g} to {axis.shown[-1]:g}{unit}, {len(axis.values)} values"
+    if len(axis.entries) > 1:
+        words += f" ({len(axis.entries)} entries alike)"
+    return words
+
+
+def _remarks(sweep: Sweep) -> list[Block]:
+    plan = sweep.plan
+    if plan.case.hardware is None:
+        return [
+            Prose(
+                "The case holds no metal: it was sized anew for every value, and holes are "
+                "rounded to drills, so that trends come in small steps. To vary what is built, "
+                "sweep a case that `combustor size -o` has completed."
+            )
+        ]
+    owners = {
+        entry.path[1] if entry.path[0] == "points" else None
+        for a in plan.axes
+        for entry in a.entries
+    }
+    if len(plan.points) > 1 and len(owners) == 1 and None not in owners:
+        (index,) = owners
+        name = plan.case.points[int(index or 0)].name
+        return [
+            Prose(
+                f"Only {name} moves with {plan.axes[0].key}: --point {name} leaves the others out."
+            )
+        ]
+    return []
+
+
+def _cut(sweep: Sweep, point: str) -> list[Block]:
+    count = sum(result.point == point for _, result in sweep.grid)
+    left_out = count - len(_digest(count))
+    return [Prose(f"{left_out} more values are in --csv and --json.")] if left_out else []
+
+
+def _digest(count: int) -> list[int]:
+    even = np.linspace(0, count - 1, min(MOST_LINES, count)).round().astype(int)
+    return sorted(set(even.tolist()))
+
+
+def _where(sweep: Sweep) -> str:
+    if len(sweep.plan.axes) == 1:
+        return ""
+    return f", at {_plotted_point(sweep)}"
+
+
+def _plotted_point(sweep: Sweep) -> str:
+    design = sweep.plan.case.targets.design_point
+    return design if design in sweep.plan.points else sweep.plan.points[0]
+
+
+def _lines(sweep: Sweep) -> list[tuple[str, list[tuple[float, Outcome]]]]:
+    """Return what is drawn as one curve each: a name and outcomes along the last axis."""
+    last = sweep.plan.axes[-1]
+    if len(sweep.plan.axes) == 1:
+        return [
+            (
+                point,
+                [(last.shown[r.indices[-1]], x.outcome) for r, x in sweep.grid if x.point == point],
+            )
+            for point in sweep.plan.points
+        ]
+    first, point = sweep.plan.axes[0], _plotted_point(sweep)
+    count = len(first.values)
+    picked = np.linspace(0, count - 1, min(MOST_CURVES, count)).round().astype(int).tolist()
+    return [
+        (
+            f"{first.key.split('.')[-1]} {first.shown[i]:g} {first.unit}".rstrip(),
+            [
+                (last.shown[r.indices[-1]], x.outcome)
+                for r, x in sweep.grid
+                if x.point == point and r.indices[0] == i
+            ],
+        )
+        for i in dict.fromkeys(picked)
+    ]
+
+
+def _ppm(value: float | None) -> float | None:
+    return None if value is None else 1e6 * value
+
+
+def _curves(sweep: Sweep, name: str) -> tuple[Curve, ...]:
+    return tuple(
+        Curve(title, tuple((x, _ppm(getattr(outcome, name))) for x, outcome in line))
+        for title, line in _lines(sweep)
+    )
+
+
+def _trade_curves(sweep: Sweep) -> tuple[Curve, ...]:
+    return tuple(
+        Curve(
+            title,
+            tuple(
+                (1e6 * outcome.nox, _ppm(outcome.co))
+                for _, outcome in line
+                if outcome.nox is not None
+            ),
+        )
+        for title, line in _lines(sweep)
+    )
