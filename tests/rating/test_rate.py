@@ -108,15 +108,14 @@ def test_wider_dilution_holes_lower_loss_and_starve_the_dome(bench):
 
 
 def test_ten_percent_more_dilution_area_takes_its_share_from_the_dome(bench):
-    # 0.08-0.10 of the dilution share with openings of constant discharge coefficient (computed);
-    # cross-flow at the sized machine's annulus takes some of it back
+    # 0.08-0.10 of the dilution share, computed for openings of constant discharge coefficient
     before = bench.rated("full")
     row = bench.design.hardware.opening("dilution")
     wider = bench.with_row("dilution", diameter=row.diameter * 1.1**0.5, area=row.area * 1.1)
     after = bench.rate("full", hardware=wider)
     share = before.split.flow("dilution") / before.split.flow()
     lost = 1.0 - after.split.flow("swirler", "dome") / before.split.flow("swirler", "dome")
-    assert 0.07 * share < lost < 0.10 * share
+    assert 0.08 * share < lost < 0.10 * share
 
 
 def test_point_that_cannot_burn_is_blown_out_and_the_others_still_stand(bench):
