@@ -139,6 +139,7 @@ class Targets(Table):
     swirler_vane_thickness: k.Thickness = 1.2e-3
     swirler_vane_shape: Literal["flat", "curved"] = "flat"
     swirler_hub_diameter: k.HubDiameter | None = None
+    swirlers: k.Holes | None = None
     hole_edge: Literal["plain", "plunged"] = "plain"
     primary_holes: k.Holes | None = None
     secondary_holes: k.Holes | None = None

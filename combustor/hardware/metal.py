@@ -203,11 +203,17 @@ class Diffuser:
 
 @dataclass(frozen=True)
 class Injector:
-    """A fuel injector group: its share of the fuel and the openings that feed it air."""
+    """A fuel injector group: its share of the fuel and the openings that feed it air.
+
+    ``premix_length`` (m) and ``premix_area`` (m2, all passages of one can) are those of the
+    passage in which its fuel and air mix ahead of the dome; None where they meet in the flame.
+    """
 
     name: str
     share: float
     openings: tuple[str, ...]
+    premix_length: float | None = None
+    premix_area: float | None = None
 
 
 @dataclass(frozen=True)

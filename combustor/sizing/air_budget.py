@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 from combustor.base.errors import InfeasibleError
 from combustor.base.method import Method
+from combustor.sizing.sketch import RowName
 
 AIR_BUDGET = Method(
     key="air-budget",
@@ -46,11 +47,18 @@ class AirBudget:
     dilution: float
     film: float
     leak: float
+    premixer: float = 0.0
 
     @property
     def front(self) -> float:
-        """Swirler and dome together."""
-        return self.swirler + self.dome
+        """Swirler, premixer and dome together: what does not pass the annulus."""
+        return self.swirler + self.premixer + self.dome
+
+    def of_row(self, name: RowName) -> float:
+        """Return the share of a row."""
+        return {"primary": self.primary, "secondary": self.secondary, "dilution": self.dilution}[
+            name
+        ]
 
 
 @dataclass(frozen=True)

@@ -68,8 +68,16 @@ def _casing(task: Task, rounded: Rounded) -> Iterator[Dimension]:
     yield Dimension(
         "reference area", casing.area, "area", casing.method, casing.candidate, casing.note
     )
-    note = f"rounded up; room for {1e3 * (task.case.combustor.casing_diameter or 0.0):.0f} mm"
-    yield Dimension("casing bore", metal.reference_height, "length", casing.method, None, note)
+    note = f"rounded up; room for {1e3 * casing.room:.0f} mm"
+    mean = task.section.mean_diameter
+    if mean is None:
+        yield Dimension("casing bore", metal.reference_height, "length", casing.method, None, note)
+    else:
+        height = metal.reference_height
+        yield Dimension("casing height", height, "length", casing.method, None, note)
+        mid = f"mean diameter {1e3 * mean:.0f} mm, that of the envelope"
+        yield Dimension("casing outer diameter", mean + height, "length", casing.method, None, mid)
+        yield Dimension("casing inner diameter", mean - height, "length", casing.method)
     velocity = task.duty.inlet.mass_flow / (task.duty.density * casing.area)
     yield Dimension("reference velocity", velocity, "velocity", casing.method)
 
@@ -85,10 +93,15 @@ def _liner(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         frame.ratio_candidate,
         frame.ratio_note,
     )
-    yield Dimension(
-        "liner diameter", frame.liner_height, "length", frame.ratio_method, None, "to 1 mm"
-    )
-    yield Dimension("annulus gap", sketch.annulus_gap, "length", frame.ratio_method)
+    what = "liner diameter" if task.section.is_round else "liner height"
+    yield Dimension(what, frame.liner_height, "length", frame.ratio_method, None, "to 1 mm")
+    if task.section.layout == "can-annular":
+        gap = "half the hydraulic diameter of the air's passage between cans and casing"
+    elif task.section.layout == "annular":
+        gap = "outer and inner alike"
+    else:
+        gap = ""
+    yield Dimension("annulus gap", sketch.annulus_gap, "length", frame.ratio_method, None, gap)
     yield Dimension(
         "annulus velocity",
         annulus_velocity(task, state, rounded),
@@ -245,7 +258,7 @@ def _swirler(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         "area",
         AREAS,
         Candidate(
-            ratio * task.casing.area / task.section.cans,
+            ratio * task.casing.area / task.section.cans / opening.count,
             swirler.SWIRLER_AREA,
             "by its equation on the drop to liner static; the split counts the drop to total",
         ),
@@ -261,6 +274,17 @@ def _swirler(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
     )
     yield Dimension("swirler tip diameter", vanes.tip_diameter, "length", AREAS, None, "to 0.1 mm")
     yield Dimension("swirler vane angle", vanes.vane_angle, "angle", swirler.VANE_PRACTICE)
+    if opening.count > 1:
+        pitch = math.pi * (task.section.mean_diameter or 0.0) / opening.count
+        stated = task.case.targets.swirlers is not None
+        yield Dimension(
+            "swirlers",
+            opening.count,
+            "count",
+            diffuser.STATED if stated else swirler.SWIRLER_COUNT,
+            None,
+            f"pitch {1e3 * pitch:.0f} mm at the mean diameter",
+        )
     yield Dimension("swirler vanes", vanes.vane_count, "count", swirler.VANE_PRACTICE)
     number = swirler.swirl_number(vanes.hub_diameter, vanes.tip_diameter, vanes.vane_angle)
     yield Dimension("swirl number", number, "ratio", swirler.SWIRL_NUMBER)
@@ -282,10 +306,10 @@ def _rows(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         "secondary": targets.secondary_holes,
         "dilution": targets.dilution_holes,
     }
-    for row in rounded.sketch.rows:
-        plan, opening = state.plans[row.name], rounded.hardware.opening(row.name)
-        flow, diameter = rounded.split.opening(row.name), _diameter(opening)
-        pitch = rows.pitch_over_diameter(rounded.sketch.perimeter, row.count, diameter)
+    sketch = rounded.sketch
+    for row in sketch.rows:
+        plan, each = state.plans[row.name], row.count // len(sketch.sides)
+        many = "" if len(sketch.sides) == 1 else f", {each} in either wall, opposed in line"
         yield Dimension(
             f"{row.name} row: holes",
             row.count,
@@ -296,29 +320,40 @@ def _rows(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
                 rows.HOLDEMAN_COUNT,
                 "best mixing; the jets' reach was put first",
             ),
-            plan.bound or f"{plan.free_count:.2f} before rounding",
-        )
-        yield Dimension(
-            f"{row.name} row: hole diameter",
-            diameter,
-            "length",
-            AREAS,
-            Candidate(plan.hole_diameter, DRILL_STEPS, "before rounding to a drill"),
-            f"{pitch:.1f} diameters from hole to hole",
+            (plan.bound or f"{plan.free_count:.2f} before rounding") + many,
         )
         yield Dimension(f"{row.name} row: position", row.station, "length", rows.ROW_POSITION)
-        yield Dimension(
-            f"{row.name} row: penetration",
-            flow.penetration or 0.0,
-            "length",
-            PENETRATION_ROW,
-            Candidate(
-                rows.wanted_penetration(task.section, state.frame.liner_height),
-                rows.ROW_COUNT,
-                "aimed at; the whole count gives the value shown",
-            ),
-            f"momentum ratio {flow.momentum_flux_ratio:.1f}",
-        )
+        for name, shape in zip(sketch.names(row.name), sketch.sides, strict=True):
+            yield from _holes(task, state, rounded, name, shape.perimeter / each)
+
+
+def _holes(
+    task: Task, state: State, rounded: Rounded, name: str, pitch: float
+) -> Iterator[Dimension]:
+    flow = rounded.split.opening(name)
+    diameter = _diameter(rounded.hardware.opening(name))
+    assert state.fit is not None
+    exact = _diameter(state.fit.hardware.opening(name))
+    yield Dimension(
+        f"{name} row: hole diameter",
+        diameter,
+        "length",
+        AREAS,
+        Candidate(exact, DRILL_STEPS, "before rounding to a drill"),
+        f"{pitch / diameter:.1f} diameters from hole to hole",
+    )
+    yield Dimension(
+        f"{name} row: penetration",
+        flow.penetration or 0.0,
+        "length",
+        PENETRATION_ROW,
+        Candidate(
+            rows.wanted_penetration(task.section, state.frame.liner_height),
+            rows.ROW_COUNT,
+            "aimed at; the whole count gives the value shown",
+        ),
+        f"momentum ratio {flow.momentum_flux_ratio:.1f}",
+    )
 
 
 def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
@@ -346,7 +381,9 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
     )
     yield Dimension("film slot lip", slots[0].lip_thickness, "length", film_slots.SLOT_HEIGHT)
     for ring, peak in zip(slots, film_plan.peak, strict=True):
-        opening = rounded.hardware.opening(ring.name)
+        openings = [rounded.hardware.opening(name) for name in rounded.sketch.names(ring.name)]
+        opening = openings[0]
+        inner = "".join(f"; inner wall {one.count}" for one in openings[1:])
         yield Dimension(
             f"{ring.name}: metering holes",
             opening.count,
@@ -354,7 +391,7 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
             film_slots.METERING_HOLES,
             None,
             f"{1e3 * _diameter(opening):.1f} mm at x {1e3 * ring.station:.0f} mm; panel ends at "
-            f"{peak:.0f} K on this film alone",
+            f"{peak:.0f} K on this film alone{inner}",
         )
 
 

@@ -12,6 +12,7 @@ from combustor.sizing.drill import nearest_drill
 from combustor.sizing.frame import Frame, LossShares, frame_of
 from combustor.sizing.reference_area import corrected_loss
 from combustor.sizing.rows import RowPlan
+from combustor.sizing.section import Section
 from combustor.sizing.sketch import (
     Row,
     RowName,
@@ -21,10 +22,11 @@ from combustor.sizing.sketch import (
     VanePack,
 )
 from combustor.sizing.state import State, Task, shares_by_opening
-from combustor.sizing.swirler import HUB_RATIO, VANE_LOSS_COEFFICIENT
+from combustor.sizing.swirler import HUB_RATIO, SWIRLER_PITCH, VANE_LOSS_COEFFICIENT
 
 ROW_NAMES: tuple[RowName, ...] = ("primary", "secondary", "dilution")
 DOME_DRILL_SHARE = 0.012
+SMALLEST_DOME_DRILL = 1.5e-3
 _FIRST_FILM = 0.28
 _FIRST_HOT = 0.03
 _FIRST_HEIGHT = 1.5e-3
@@ -83,7 +85,9 @@ def draw_sketch(
             HUB_RATIO,
             targets.swirler_hub_diameter,
         ),
-        dome_hole_diameter=nearest_drill(DOME_DRILL_SHARE * frame.liner_height),
+        dome_hole_diameter=nearest_drill(
+            max(DOME_DRILL_SHARE * frame.liner_height, SMALLEST_DOME_DRILL)
+        ),
         rows=placed(frame, plans),
         slots=slots,
         hole_edge=targets.hole_edge,
@@ -97,7 +101,18 @@ def draw_sketch(
             targets.roughness,
         ),
         drill_step=targets.drill_step,
+        swirlers=swirlers_of(task.section, frame.liner_height, targets.swirlers),
     )
+
+
+def swirlers_of(section: Section, liner_height: float, stated: int | None) -> int:
+    """Return the number of swirlers in one liner: one a can, an even number round a ring."""
+    if stated is not None:
+        return stated
+    if section.mean_diameter is None or section.is_round:
+        return 1
+    pitches = math.pi * section.mean_diameter / (SWIRLER_PITCH * liner_height)
+    return max(2 * round(pitches / 2.0), 2)
 
 
 def placed(frame: Frame, plans: Mapping[str, RowPlan]) -> tuple[Row, ...]:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from combustor.airflow.result import AirSplit, Inlet
 from combustor.hardware.metal import Hardware
 from combustor.sizing.reference_area import corrected_loss
-from combustor.sizing.zones import pattern_factor
+from combustor.sizing.zones import law_area, pattern_factor
 
 JET_ROLES = ("primary", "secondary", "dilution")
 
@@ -23,11 +23,12 @@ def liner_drop(split: AirSplit) -> float:
 
 def liner_loss_factor(hardware: Hardware, inlet: Inlet, split: AirSplit) -> float:
     """Return the loss over the liner in reference dynamic heads, dP_L/q_ref [-]."""
+    liner_area = float(hardware.liner.area.at(0.0)) * hardware.cans
     head = corrected_loss(
         inlet.mass_flow,
         inlet.temperature,
         inlet.pressure,
-        hardware.reference_area,
+        law_area(hardware.reference_area, liner_area, hardware.layout == "can-annular"),
         inlet.gas_constant,
     )
     return liner_drop(split) / (head * inlet.pressure)

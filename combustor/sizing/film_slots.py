@@ -142,7 +142,9 @@ def with_metering(sketch: Sketch, areas: Mapping[str, float]) -> Sketch:
     rings = tuple(
         replace(
             ring,
-            hole_diameter=metering_diameter(areas[ring.name], sketch.perimeter, ring.height),
+            hole_diameter=metering_diameter(
+                sum(areas[name] for name in sketch.names(ring.name)), sketch.perimeter, ring.height
+            ),
         )
         for ring in sketch.slots
     )

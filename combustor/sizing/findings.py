@@ -8,7 +8,12 @@ from collections.abc import Iterator
 from combustor.base.finding import Finding, Level
 from combustor.base.method import Method
 from combustor.sizing import cooling, diffuser, film_slots, liner_ratio, rows, swirler, zones
-from combustor.sizing.casing import loading_of
+from combustor.sizing.casing import (
+    ATMOSPHERE,
+    HEAT_RELEASE,
+    HIGHEST_HEAT_RELEASE,
+    loading_of,
+)
 from combustor.sizing.dimensions import annulus_velocity
 from combustor.sizing.exit_pattern import pattern_factor_of
 from combustor.sizing.reference_area import (
@@ -32,18 +37,10 @@ LINER_SHARE = Method(
     source="design practice: at least 2.5 % of the inlet pressure for strong jets",
     reading="common practice, no source",
 )
-HEAT_RELEASE = Method(
-    key="space-heating-rate",
-    quantity="heat release over liner volume and pressure",
-    source="Lefebvre 1983: industrial 10 to 25, aero 40 to 60 MW/m3/atm",
-    reading="from memory",
-)
 
 LEAST_HEAD_RATIO = 4.0
 LEAST_LINER_LOSS = 0.025
-HIGHEST_HEAT_RELEASE = 60.0
 SHALLOW, DEEP = 0.6, 1.3
-ATMOSPHERE = 101325.0
 
 
 def findings_of(task: Task, state: State, rounded: Rounded) -> tuple[Finding, ...]:
@@ -164,11 +161,12 @@ def _metering(rounded: Rounded) -> Iterator[Finding]:
     low, high = film_slots.METERING_HOLES.validity["pitch_over_diameter"]
     pitches = {}
     for ring in rounded.sketch.slots:
-        opening = rounded.hardware.opening(ring.name)
-        assert opening.diameter is not None
-        pitches[ring.name] = rows.pitch_over_diameter(
-            rounded.sketch.perimeter, opening.count, opening.diameter
-        )
+        for name, shape in zip(rounded.sketch.names(ring.name), rounded.sketch.sides, strict=True):
+            opening = rounded.hardware.opening(name)
+            assert opening.diameter is not None
+            pitches[name] = rows.pitch_over_diameter(
+                shape.perimeter, opening.count, opening.diameter
+            )
     for limit, name in (
         (high, max(pitches, key=lambda name: pitches[name])),
         (low, min(pitches, key=lambda name: pitches[name])),
@@ -260,26 +258,32 @@ def _diffuser(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
 
 def _jets(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
     depth = rows.wanted_penetration(task.section, state.frame.liner_height)
-    for row in rounded.sketch.rows:
-        flow, opening = rounded.split.opening(row.name), rounded.hardware.opening(row.name)
+    sketch = rounded.sketch
+    jets = [
+        (name, shape)
+        for row in sketch.rows
+        for name, shape in zip(sketch.names(row.name), sketch.sides, strict=True)
+    ]
+    for name, shape in jets:
+        flow, opening = rounded.split.opening(name), rounded.hardware.opening(name)
         assert opening.diameter is not None
-        yield from _weak_jets(row.name, flow.head_ratio, flow.momentum_flux_ratio)
+        yield from _weak_jets(name, flow.head_ratio, flow.momentum_flux_ratio)
         reach = (flow.penetration or 0.0) / depth
         if not SHALLOW <= reach <= DEEP:
             yield Finding(
                 "watch",
-                f"penetration of the {row.name} row",
+                f"penetration of the {name} row",
                 1e3 * (flow.penetration or 0.0),
                 1e3 * depth,
                 "mm",
                 "fewer, larger holes" if reach < SHALLOW else "more, smaller holes",
                 rows.ROW_COUNT.citation,
             )
-        pitch = rows.pitch_over_diameter(rounded.sketch.perimeter, row.count, opening.diameter)
+        pitch = rows.pitch_over_diameter(shape.perimeter, opening.count, opening.diameter)
         if pitch < rows.LEAST_PITCH:
             yield Finding(
                 "act",
-                f"pitch over diameter of the {row.name} row",
+                f"pitch over diameter of the {name} row",
                 pitch,
                 rows.LEAST_PITCH,
                 "-",
@@ -350,14 +354,15 @@ def _liner(task: Task, rounded: Rounded) -> Iterator[Finding]:
     metal = rounded.hardware
     heat = task.duty.fuel_flow * task.duty.lower_heating_value
     volume = metal.volume(0.0, metal.liner_length)
+    highest = HIGHEST_HEAT_RELEASE / 1e6
     rate = heat / volume / (task.duty.inlet.pressure / ATMOSPHERE) / 1e6
     yield Finding(
-        "ok" if rate <= HIGHEST_HEAT_RELEASE else "watch",
+        "ok" if rate <= highest else "watch",
         "space heating rate",
         rate,
-        HIGHEST_HEAT_RELEASE,
+        highest,
         "MW/m3/atm",
-        "" if rate <= HIGHEST_HEAT_RELEASE else "a larger or longer liner",
+        "" if rate <= highest else "a larger or longer liner",
         HEAT_RELEASE.citation,
     )
 

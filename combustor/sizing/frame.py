@@ -15,7 +15,7 @@ from combustor.sizing.diffuser import STATED, DiffuserShape, choose
 from combustor.sizing.duty import Duty
 from combustor.sizing.record import Candidate
 from combustor.sizing.reference_area import corrected_loss
-from combustor.sizing.section import Section
+from combustor.sizing.section import CAN_CLEARANCE, Section
 
 LINER_FITS_LENGTH = Method(
     key="liner-fits-length",
@@ -28,6 +28,7 @@ LINER_FITS_LENGTH = Method(
 # spare length against the rounding of holes: the loss factor is only known afterwards
 LENGTH_MARGIN = 1.01
 LEAST_DILUTION_RATIO = 0.5
+LEAST_RATIO_IN_RING = 0.30
 # the annulus is sized on inlet totals; behind the diffuser the air is 1 to 2 % faster
 _MACH_MARGIN = 0.98
 _RATIO_STEP = 0.0025
@@ -140,7 +141,7 @@ def frame_of(
     head = corrected_loss(
         inlet.mass_flow, inlet.temperature, inlet.pressure, casing.area, inlet.gas_constant
     )
-    loss_factor = loss.jets / head
+    loss_factor = loss.jets / head * _law_share(section, casing)
     needed = LENGTH_MARGIN * zones.length_ratio_for(
         targets.pattern_factor, loss_factor, section.is_round
     )
@@ -165,6 +166,14 @@ def frame_of(
         loss_factor,
         chart.notices,
     )
+
+
+def _law_share(section: Section, casing: Casing) -> float:
+    """Return the head of the casing over that the pattern-factor law is taken on."""
+    largest = section.largest_liner(casing.height, 0.0)
+    if not math.isfinite(largest) or largest <= 0.0:
+        return 1.0
+    return (zones.law_area(casing.area, section.area(largest), True) / casing.area) ** 2
 
 
 @dataclass(frozen=True)
@@ -256,7 +265,39 @@ def _liner_ratio(
             f"{builder.length_ratio:.2f} liner heights in "
             f"{1e3 * builder.room(builder.section.height(ratio * builder.casing.area)):.0f} mm"
         )
-    return ratio, method, rival, note
+    return _beside_neighbours(builder, ratio, method, rival, note)
+
+
+def _beside_neighbours(
+    builder: _Builder, ratio: float, method: Method, rival: Candidate, note: str
+) -> tuple[float, Method, Candidate, str]:
+    """Return the ratio held to what cans in one casing ring leave each other."""
+    section, casing = builder.section, builder.casing
+    largest = section.largest_liner(casing.height, builder.case.targets.sheet_thickness)
+    if section.height(ratio * casing.area) <= largest:
+        return ratio, method, rival, note
+    if largest <= 0.0 or section.area(largest) / casing.area < LEAST_RATIO_IN_RING:
+        _refuse_cans(builder, largest)
+    rival = Candidate(ratio, method, "the cans would touch each other or the casing")
+    note = f"{section.cans} cans in a ring {1e3 * casing.height:.0f} mm high"
+    # rounded down, so that the millimetre of the drawing still fits
+    fitting = section.area(math.floor(1e3 * largest) / 1e3) / casing.area
+    return fitting, CAN_CLEARANCE, rival, note
+
+
+def _refuse_cans(builder: _Builder, largest: float) -> None:
+    section, casing = builder.section, builder.casing
+    mean = section.mean_diameter or 0.0
+    best = max(round(math.pi * mean / (1.1 * casing.height)), 2)
+    raise InfeasibleError(
+        (
+            f"{section.cans} cans stand in a casing ring {1e3 * casing.height:.0f} mm high on a "
+            f"mean diameter of {1e3 * mean:.0f} mm",
+            f"beside its neighbours and the casing a liner can be {1e3 * largest:.0f} mm at most",
+            f"the liners would fill less than {LEAST_RATIO_IN_RING:.0%} of the casing",
+        ),
+        f"About {best} cans fill this ring; or state another envelope.",
+    )
 
 
 def _ratio_by_annulus(builder: _Builder, front_share: float) -> float:

@@ -18,7 +18,8 @@ from combustor.base.convergence import Convergence
 from combustor.base.errors import InfeasibleError, NotConvergedError
 from combustor.base.method import Method
 from combustor.hardware.metal import Hardware
-from combustor.sizing.sketch import DOME, LEAK, SWIRLER, Sketch, metal_of
+from combustor.sizing.metal import metal_of
+from combustor.sizing.sketch import DOME, LEAK, PREMIXER, SWIRLER, Sketch
 
 AREAS = Method(
     key="areas-by-air-split",
@@ -28,7 +29,7 @@ AREAS = Method(
 )
 
 TOLERANCE = 1e-6
-_FIRST_COEFFICIENT = {DOME: DOME_PLATE, LEAK: SHARP, SWIRLER: 0.6}
+_FIRST_COEFFICIENT = {DOME: DOME_PLATE, LEAK: SHARP, SWIRLER: 0.6, PREMIXER: 0.6}
 _LEAST_OPENING_SHARE = 0.15
 
 

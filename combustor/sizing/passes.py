@@ -123,7 +123,7 @@ def _budget(task: Task, sketch: Sketch, films: tuple[float, ...]) -> AirBudget:
     air = task.duty.inlet.mass_flow
     end = sketch.zone_ends[1]
     mixed = sum(
-        flow * mixed_share(metal, metal.opening(ring.name), end)
+        flow * mixed_share(metal, metal.opening(sketch.names(ring.name)[0]), end)
         for ring, flow in zip(sketch.slots, films, strict=True)
     )
     return budget(
@@ -157,13 +157,18 @@ def _rows(
     }
     plans: dict[str, RowPlan] = {}
     for row in sketch.rows:
-        conditions = row_conditions(task, sketch, row, shares[row.name], profile, _solved(state))
-        count = row.count if frozen else stated[row.name]
+        share = sum(shares[name] for name in sketch.names(row.name))
+        conditions = row_conditions(task, sketch, row, share, profile, _solved(state))
+        count = row.count if frozen else _of_all_sides(stated[row.name], sketch)
         plan = plan_row(conditions, task.section, sketch.liner_height, count)
         if frozen:
             plan = replace(plan, bound=state.plans[row.name].bound)
         plans[row.name] = plan
     return plans
+
+
+def _of_all_sides(count: int | None, sketch: Sketch) -> int | None:
+    return None if count is None else count * len(sketch.sides)
 
 
 def row_conditions(
@@ -188,7 +193,7 @@ def row_conditions(
         drop = 0.8 * (task.case.targets.pressure_loss or 0.0) * inlet.pressure
         velocity, coefficient = math.sqrt(2.0 * drop / density), 0.55
     else:
-        jet = solved.opening(row.name)
+        jet = solved.opening(sketch.names(row.name)[0])
         velocity, density = jet.jet_velocity, jet.jet_density
         coefficient = max(jet.discharge_coefficient, 0.05)
     return RowConditions(

@@ -164,8 +164,8 @@ def loading_area(point: LoadingPoint, section: Section) -> float:
     """Return the reference area that gives a point the loading its kind needs [m2]."""
     per_area = chemical_loading(point.pressure, 1.0, 1.0, point.temperature, point.air_flow)
     needed = REQUIRED_LOADING[point.kind] / per_area
-    height = (needed / section.coefficient) ** (1.0 / (section.exponent + 0.75))
-    return section.area(height)
+    height = (needed / section.casing_coefficient) ** (1.0 / (section.casing_exponent + 0.75))
+    return section.casing_area(height)
 
 
 def governing_loading(

@@ -12,9 +12,10 @@ from combustor.hardware.metal import Hardware
 from combustor.hardware.zone_air import zone_air
 from combustor.sizing.drill import drill_step
 from combustor.sizing.film_slots import with_metering
+from combustor.sizing.metal import metal_of
 from combustor.sizing.profile import liner_profile
 from combustor.sizing.record import ZoneTarget
-from combustor.sizing.sketch import DOME, SWIRLER, Sketch, metal_of
+from combustor.sizing.sketch import DOME, PREMIXER, SWIRLER, Sketch
 from combustor.sizing.state import State, Task
 
 ZONE_TOLERANCE = 0.03
@@ -110,12 +111,14 @@ def _moves(
     sketch: Sketch, areas: Mapping[str, float], hardware: Hardware
 ) -> Iterator[dict[str, float]]:
     for row in sketch.rows:
-        diameter = hardware.opening(row.name).diameter
-        assert diameter is not None
-        step = drill_step(diameter, sketch.drill_step)
-        for moved in (diameter - step, diameter + step):
-            yield {**areas, row.name: row.count * 0.25 * math.pi * moved**2}
-    groups = ([SWIRLER], [DOME], [ring.name for ring in sketch.slots])
+        for name in sketch.names(row.name):
+            hole = hardware.opening(name)
+            assert hole.diameter is not None
+            step = drill_step(hole.diameter, sketch.drill_step)
+            for moved in (hole.diameter - step, hole.diameter + step):
+                yield {**areas, name: hole.count * 0.25 * math.pi * moved**2}
+    front = [SWIRLER] if sketch.premixing is None else [PREMIXER]
+    groups = (front, [DOME], [name for ring in sketch.slots for name in sketch.names(ring.name)])
     for group in groups:
         for scale in (0.99, 1.01):
             yield {**areas, **{name: scale * areas[name] for name in group}}

@@ -20,7 +20,8 @@ ROW_COUNT = Method(
 HOLDEMAN_COUNT = Method(
     key="row-count-holdeman",
     quantity="number of holes in a row for the best mixing",
-    source="Holdeman 1993, Prog. Energy Combust. Sci. 19: n = pi sqrt(2 J)/2.5 in a can",
+    source="Holdeman 1993, Prog. Energy Combust. Sci. 19: n = pi sqrt(2 J)/2.5 in a can, pitch "
+    "1.25 H/sqrt(J) in rows opposed in line",
     reading="from memory",
     validity={"momentum_flux_ratio": (5.0, 105.0)},
 )
@@ -40,7 +41,7 @@ ROW_POSITION = Method(
 )
 
 PENETRATION_ROUND, PENETRATION_RING = 0.33, 0.40
-LEAST_COUNT = 6
+LEAST_COUNT, LEAST_COUNT_RING = 6, 12
 AIMED_PITCH, LEAST_PITCH = 2.0, 1.5
 WEAK_MOMENTUM_RATIO = 10.0
 
@@ -102,6 +103,22 @@ def best_mixing_count(momentum_ratio: float) -> float:
     return math.pi * math.sqrt(2.0 * momentum_ratio) / 2.5
 
 
+def best_count_opposed(momentum_ratio: float, mean_diameter: float, height: float) -> float:
+    """Return Holdeman's number of holes in two rows opposed in line, both walls of a ring [-].
+
+    Pitch S = 1.25 H / sqrt(J) at the diameter that halves the area.
+    """
+    pitch = 1.25 * height / math.sqrt(momentum_ratio)
+    return 2.0 * math.pi * mean_diameter / pitch
+
+
+def best_count(momentum_ratio: float, section: Section, liner_height: float) -> float:
+    """Return Holdeman's number of holes for a section, all sides [-]."""
+    if section.is_round or section.mean_diameter is None:
+        return best_mixing_count(momentum_ratio)
+    return best_count_opposed(momentum_ratio, section.mean_diameter, liner_height)
+
+
 def plan_row(
     conditions: RowConditions,
     section: Section,
@@ -117,7 +134,7 @@ def plan_row(
     liner_height : float
         Liner diameter or ring height [m]
     stated_count : int or None
-        The user's own count.
+        The count to keep, all sides.
 
     Returns
     -------
@@ -131,15 +148,17 @@ def plan_row(
     free = squared / (depth / per_diameter) ** 2
     drilled_squared = squared / conditions.discharge_coefficient
     perimeter = section.perimeter(liner_height)
-    most = max(int(perimeter**2 / (AIMED_PITCH**2 * drilled_squared)), LEAST_COUNT)
-    count, bound = _bounded(free, most)
+    sides = 1 if section.is_round else 2
+    least = LEAST_COUNT if section.is_round else LEAST_COUNT_RING
+    most = max(sides * int(perimeter**2 / (sides * AIMED_PITCH**2 * drilled_squared)), least)
+    count, bound = _bounded(free, least, most, sides)
     if stated_count is not None:
         count, bound = stated_count, "count stated in the case"
     jet = math.sqrt(squared / count)
     return RowPlan(
         count=count,
         free_count=free,
-        best_mixing_count=best_mixing_count(conditions.momentum_ratio),
+        best_mixing_count=best_count(conditions.momentum_ratio, section, liner_height),
         hole_diameter=math.sqrt(drilled_squared / count),
         penetration=per_diameter * jet,
         bound=bound,
@@ -151,10 +170,10 @@ def pitch_over_diameter(perimeter: float, count: int, diameter: float) -> float:
     return perimeter / (count * diameter)
 
 
-def _bounded(free: float, most: int) -> tuple[int, str]:
-    count = max(round(free), 1)
+def _bounded(free: float, least: int, most: int, sides: int) -> tuple[int, str]:
+    count = max(sides * round(free / sides), 1)
     if count > most:
         return most, f"pitch of {AIMED_PITCH:.0f} diameters allows no more"
-    if count < LEAST_COUNT:
-        return LEAST_COUNT, f"at least {LEAST_COUNT} holes to close the ring"
+    if count < least:
+        return least, f"at least {least} holes to close the ring"
     return count, ""

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from combustor.base.convergence import Convergence
 from combustor.base.errors import InputError, Problem
-from combustor.case.schema import Case
+from combustor.case.schema import Case, Combustor
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.sizing.air_budget import PREFERRED_DOME, PREFERRED_SWIRLER
@@ -69,18 +69,36 @@ def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
 def task_of(case: Case, fuel: Fuel, gas: Gas) -> Task:
     """Return the duty of the design point and the casing that takes it."""
     duty = duty_of(case, fuel, gas)
-    section = Section(case.combustor.cans)
-    assert case.targets.pressure_loss is not None and case.combustor.casing_diameter is not None
+    section = section_of(case.combustor)
+    assert case.targets.pressure_loss is not None
     casing = casing_of(
         duty,
         section,
         case.combustor.layout,
         case.targets.pressure_loss,
-        case.combustor.casing_diameter,
+        room_of(case.combustor),
         highest_annulus_velocity(duty, case.targets),
         1.0 - PREFERRED_SWIRLER - PREFERRED_DOME,
     )
     return Task(case, duty, section, casing)
+
+
+def section_of(combustor: Combustor) -> Section:
+    """Return the shape of casing and liner; a ring keeps the mean diameter of its envelope."""
+    outer, inner = combustor.casing_outer_diameter, combustor.casing_inner_diameter
+    if combustor.layout == "can" or outer is None or inner is None:
+        return Section(combustor.cans)
+    return Section(combustor.cans, 0.5 * (outer + inner))
+
+
+def room_of(combustor: Combustor) -> float:
+    """Return the casing diameter or ring height there is room for [m]."""
+    if combustor.layout == "can":
+        assert combustor.casing_diameter is not None  # required of a case without metal
+        return combustor.casing_diameter
+    outer, inner = combustor.casing_outer_diameter, combustor.casing_inner_diameter
+    assert outer is not None and inner is not None  # likewise
+    return 0.5 * (outer - inner)
 
 
 def settle(task: Task) -> tuple[State, float, int]:
@@ -115,15 +133,6 @@ def refuse_unsized(case: Case) -> None:
     """
     combustor, targets = case.combustor, case.targets
     problems = []
-    if combustor.layout != "can":
-        problems.append(
-            Problem(
-                "sizing knows cans only",
-                'set layout = "can", or state the metal under [hardware] and rate it',
-                "combustor.layout",
-                combustor.layout,
-            )
-        )
     if targets.front_end != "diffusion":
         problems.append(
             Problem(
@@ -142,7 +151,7 @@ def refuse_unsized(case: Case) -> None:
                 case.model.primary_jet_share,
             )
         )
-    needed = {
+    needed: dict[str, object] = {
         "targets.pressure_loss": targets.pressure_loss,
         "combustor.casing_length": combustor.casing_length,
         "combustor.inlet_annulus": combustor.inlet_annulus,
@@ -150,6 +159,9 @@ def refuse_unsized(case: Case) -> None:
     }
     if combustor.layout == "can":
         needed["combustor.casing_diameter"] = combustor.casing_diameter
+    else:
+        needed["combustor.casing_outer_diameter"] = combustor.casing_outer_diameter
+        needed["combustor.casing_inner_diameter"] = combustor.casing_inner_diameter
     problems += [
         Problem("missing", "sizing needs it", key) for key, value in needed.items() if value is None
     ]

@@ -13,16 +13,20 @@ from combustor.sizing.cooling import FilmPlan
 from combustor.sizing.duty import Duty
 from combustor.sizing.frame import Frame, LossShares
 from combustor.sizing.loop import Fit
+from combustor.sizing.metal import has_cross_fire, metal_of, opening_names
 from combustor.sizing.profile import LinerProfile, liner_profile
 from combustor.sizing.rows import RowPlan
 from combustor.sizing.section import Section
 from combustor.sizing.sketch import (
+    CROSS_FIRE,
     DOME,
     LEAK,
+    PREMIXER,
     SWIRLER,
     Sketch,
-    metal_of,
 )
+
+CROSS_FIRE_SHARE = 0.25
 
 
 @dataclass(frozen=True)
@@ -58,25 +62,28 @@ def shares_by_opening(
     shares: AirBudget, sketch: Sketch, films: tuple[float, ...]
 ) -> dict[str, float]:
     """Return the share of all air of every opening; slots take the film air as ``films``."""
-    by_name = {
-        SWIRLER: shares.swirler,
-        DOME: shares.dome,
-        "primary": shares.primary,
-        "secondary": shares.secondary,
-        "dilution": shares.dilution,
-        LEAK: shares.leak,
-    }
+    by_name = {SWIRLER: shares.swirler, DOME: shares.dome}
+    if sketch.premixing is not None:
+        by_name[PREMIXER] = shares.premixer
+    for row in sketch.rows:
+        by_name |= _apart(sketch, row.name, shares.of_row(row.name), sketch.row_shares(row.name))
     total = sum(films)
     for ring, flow in zip(sketch.slots, films, strict=True):
-        by_name[ring.name] = shares.film * flow / total
-    return by_name
+        by_name |= _apart(sketch, ring.name, shares.film * flow / total, sketch.wall_shares())
+    leak = shares.leak
+    if has_cross_fire(sketch):
+        by_name[CROSS_FIRE] = CROSS_FIRE_SHARE * leak
+        leak -= by_name[CROSS_FIRE]
+    return by_name | _apart(sketch, LEAK, leak, sketch.wall_shares())
+
+
+def _apart(sketch: Sketch, name: str, share: float, parts: tuple[float, ...]) -> dict[str, float]:
+    return {one: share * part for one, part in zip(sketch.names(name), parts, strict=True)}
 
 
 def bare_metal(sketch: Sketch) -> Hardware:
     """Return the metal with openings of token size, for what depends on positions only."""
-    names = [SWIRLER, DOME, LEAK, *(row.name for row in sketch.rows)]
-    names += [ring.name for ring in sketch.slots]
-    return metal_of(sketch, dict.fromkeys(names, 1e-4), drilled=False)
+    return metal_of(sketch, dict.fromkeys(opening_names(sketch), 1e-4), drilled=False)
 
 
 def profile_of(task: Task, sketch: Sketch, shares: Mapping[str, float]) -> LinerProfile:

@@ -35,6 +35,12 @@ VANE_PRACTICE = Method(
         "vane_thickness": (0.7e-3, 1.5e-3),
     },
 )
+SWIRLER_COUNT = Method(
+    key="swirler-count",
+    quantity="swirlers round a ring liner",
+    source="pitch of 1.0 to 1.2 liner heights at the mean diameter, an even number preferred",
+    reading="from memory",
+)
 RECIRCULATION = Method(
     key="swirl-recirculation",
     quantity="recirculated mass over swirler mass, and length of the recirculation",
@@ -46,6 +52,7 @@ RECIRCULATION = Method(
 
 VANE_LOSS_COEFFICIENT = {"flat": 1.3, "curved": 1.15}
 HUB_RATIO = 0.5
+SWIRLER_PITCH = 1.1
 RECIRCULATION_LENGTH_RATIO = 2.0
 
 

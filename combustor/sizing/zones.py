@@ -40,6 +40,7 @@ PATTERN_FACTOR = Method(
 )
 
 PRIMARY_LENGTH_RATIO = 0.70
+USUAL_FILL = 0.66
 SHORTEST_PRIMARY_RATIO = 0.67
 SECONDARY_LENGTH_RATIO = 0.50
 PATTERN_COEFFICIENT_ROUND, PATTERN_COEFFICIENT_RING = 0.070, 0.050
@@ -59,6 +60,17 @@ class LengthRatio:
 
     value: float
     notices: tuple[Notice, ...] = ()
+
+
+def law_area(reference_area: float, liner_area: float, cans_in_ring: bool) -> float:
+    """Return the reference area that the law for the pattern factor is taken on [m2].
+
+    The law was drawn from casings the liner fills to about two thirds. A ring of cans that
+    leaves more of itself empty would seem to mix by a loss factor it does not have.
+    """
+    if not cans_in_ring:
+        return reference_area
+    return min(reference_area, liner_area / USUAL_FILL)
 
 
 def dilution_length_ratio(pattern_factor: float, loss_factor: float) -> LengthRatio:

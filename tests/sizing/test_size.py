@@ -313,7 +313,9 @@ def test_what_sizing_does_not_know_is_refused_at_once(case, fuel, gas):
     )
     with pytest.raises(InputError) as caught:
         size(strange, fuel, gas)
-    assert len(caught.value.problems) == 3
+    said = str(caught.value)
+    for key in ("front_end", "primary_jet_share", "casing_outer_diameter", "casing_inner_diameter"):
+        assert key in said
 
 
 def test_more_cans_share_the_work(design, fuel, gas, make_can):
