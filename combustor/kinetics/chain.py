@@ -3,8 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, replace
-from functools import cached_property
+from dataclasses import replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -13,13 +12,15 @@ from combustor.base.convergence import Convergence
 from combustor.base.errors import InputError, Problem
 from combustor.base.method import Method, Notice
 from combustor.fuel.gas import Gas, GasState
-from combustor.kinetics.balances import Balances, balances
+from combustor.kinetics.balances import balances
 from combustor.kinetics.branch import Solved, Status, hold, solve
+from combustor.kinetics.near_wall import entered, left, parted, together
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
-from combustor.kinetics.streams import Bundle, Stream
+from combustor.kinetics.record import Cell, Chain, Part, Station
+from combustor.kinetics.streams import Bundle
 from combustor.kinetics.tear import Tear
-from combustor.kinetics.unmixedness import Distribution
-from combustor.kinetics.zone import Zone, ZoneState
+from combustor.kinetics.unmixedness import STREAMS_BY_SQUARE_ROOT, Distribution
+from combustor.kinetics.zone import GAS_CONSTANT, Zone, ZoneState
 
 Array = NDArray[np.float64]
 
@@ -31,145 +32,6 @@ EXCHANGE_WITH_THE_MEAN = Method(
     reading="from memory",
 )
 MOST_RETURNS = 60  # passes around a recirculation that spans several cells
-
-
-@dataclass(frozen=True, eq=False)
-class Cell:
-    """One stirred cell downstream of the primary zone.
-
-    Parameters
-    ----------
-    name : str
-        Zone it belongs to.
-    volume : float
-        For the flows given [m3]
-    start, end : float
-        Axial stations [m]
-    air : tuple of Stream
-        Inflows that enter here, shared among the streams by mass.
-    mixing : float
-        Rate at which the streams approach their mean [1/s]
-    returned : float
-        Mean gas drawn from here back into the primary zone [kg/s]
-    """
-
-    name: str
-    volume: float
-    start: float
-    end: float
-    air: tuple[Stream, ...] = ()
-    mixing: float = 0.0
-    returned: float = 0.0
-
-
-@dataclass(frozen=True, eq=False)
-class Station:
-    """What one cell of the chain turned out to be.
-
-    Parameters
-    ----------
-    name : str
-    start, end : float
-        [m]
-    mass_flow : float
-        Through its exit, before anything is drawn back [kg/s]
-    temperature : float
-        Of all streams mixed, enthalpy-mean [K]
-    mass_fractions : ndarray
-        Of all streams mixed [-]
-    density : float
-        Hot, by the streams' own temperatures: mass over volume [kg/m3]
-    residence_time : float
-        Hot mass in the volume over the flow through it [s]
-    stream_temperatures : ndarray
-        [K]
-    stream_shares : ndarray
-        By mass [-]
-    burning : ndarray of bool
-        By stream.
-    """
-
-    name: str
-    start: float
-    end: float
-    mass_flow: float
-    temperature: float
-    mass_fractions: Array
-    density: float
-    residence_time: float
-    stream_temperatures: Array
-    stream_shares: Array
-    burning: NDArray[np.bool_]
-
-
-@dataclass(frozen=True, eq=False)
-class Chain:
-    """A solved chain.
-
-    Parameters
-    ----------
-    status : {"burning", "blown_out", "not_converged"}
-        Judged by the primary zone; a blown-out chain has its cold primary zone and nothing after.
-    stations : tuple of Station
-        The primary zone first.
-    distribution : Distribution
-        Streams of the primary zone as they enter.
-    exit : GasState or None
-        All streams mixed after the last cell; None unless burning.
-    balances : Balances or None
-        None unless burning.
-    convergence : Convergence
-    notices : tuple of Notice
-    states : tuple of ZoneState
-        For a warm start of a neighbouring solve.
-    return_state : tuple of ndarray and float, or None
-        Composition and enthalpy of what is drawn back, for the same purpose.
-    """
-
-    status: Status
-    stations: tuple[Station, ...]
-    distribution: Distribution
-    exit: GasState | None
-    balances: Balances | None
-    convergence: Convergence
-    notices: tuple[Notice, ...]
-    states: tuple[ZoneState, ...]
-    return_state: Array | None = None
-
-    @property
-    def unmixedness(self) -> float:
-        """Realised standard deviation of mixture fraction over its mean [-]."""
-        return self.distribution.unmixedness
-
-    @cached_property
-    def x(self) -> Array:
-        """Axial station of each cell's exit [m]."""
-        return np.array([station.end for station in self.stations])
-
-    @cached_property
-    def temperatures(self) -> Array:
-        """Enthalpy-mean temperature at each cell's exit [K]."""
-        return np.array([station.temperature for station in self.stations])
-
-    @cached_property
-    def mass_fractions(self) -> Array:
-        """Mean composition at each cell's exit, cells by species [-]."""
-        return np.array([station.mass_fractions for station in self.stations])
-
-    @cached_property
-    def mass_flows(self) -> Array:
-        """Flow through each cell's exit [kg/s]."""
-        return np.array([station.mass_flow for station in self.stations])
-
-    @cached_property
-    def residence_times(self) -> Array:
-        """Residence time of each cell from hot density [s]."""
-        return np.array([station.residence_time for station in self.stations])
-
-    @cached_property
-    def densities(self) -> Array:
-        """Hot density of each cell [kg/m3]."""
-        return np.array([station.density for station in self.stations])
 
 
 def burn(
@@ -240,6 +102,7 @@ class _Pass:
         self.solved: list[Solved] = []
         self.zones: list[Zone] = []
         self.iterations = 0
+        self.beside: Bundle | None = None
         self.guesses: list[ZoneState | None] = [None] * (len(cells) + 1)
 
     def run(self, warm: Chain | None) -> Chain:
@@ -261,12 +124,15 @@ class _Pass:
     # -- one cell after the other ------------------------------------------------------------
 
     def _solve_primary(self, fresh: Bundle) -> Bundle:
+        self.beside = None
         zone = primary_zone(self.gas, self.pressure, self.primary, fresh, self.losses[0])
         return self._solve_zone(0, zone)
 
     def _solve_cell(self, place: int, bundle: Bundle) -> Bundle:
         cell = self.cells[place]
-        bundle = bundle.joined_by(cell.air, self.gas.rates.molar_masses)
+        molar_masses = self.gas.rates.molar_masses
+        core, beside = entered(bundle, self.beside, cell.beside, molar_masses)
+        bundle = together(core.joined_by(cell.air, molar_masses), beside)
         zone = Zone(
             gas=self.gas,
             pressure=self.pressure,
@@ -276,10 +142,14 @@ class _Pass:
             volume=cell.volume,
             mixing=cell.mixing,
             heat_loss=self.losses[place + 1],
+            apart=0 if beside is None else 1,
         )
-        if self.guesses[place + 1] is None:
+        guess = self.guesses[place + 1]
+        if guess is None or len(guess.moles) != zone.streams:
             self.guesses[place + 1] = _as_it_enters(zone)
-        bundle = self._solve_zone(place + 1, zone)
+        bundle, self.beside = parted(self._solve_zone(place + 1, zone), zone.apart)
+        if self.beside is not None:
+            bundle, self.beside = left(bundle, self.beside, cell.beside.returned)
         return bundle.drawn(cell.returned) if cell.returned > 0.0 else bundle
 
     def _solve_zone(self, place: int, zone: Zone) -> Bundle:
@@ -339,10 +209,11 @@ class _Pass:
         stations = tuple(self._station(place) for place in range(len(self.solved)))
         leaving, closing = None, None
         if status == "burning":
-            leaving = self._mixed(bundle.mean_moles, bundle.mean_enthalpy)
+            everything = together(bundle, self.beside)
+            leaving = self._mixed(everything.mean_moles, everything.mean_enthalpy)
             inflows = [self.primary.fuel, self.primary.air]
-            inflows += [inflow for cell in self.cells for inflow in cell.air]
-            closing = balances(self.gas, self.primary.fuel, inflows, bundle, sum(self.losses))
+            inflows += [s for cell in self.cells for s in (*cell.air, *cell.beside.air)]
+            closing = balances(self.gas, self.primary.fuel, inflows, everything, sum(self.losses))
         return Chain(
             status=status,
             stations=stations,
@@ -350,7 +221,7 @@ class _Pass:
             exit=leaving,
             balances=closing,
             convergence=self._convergence(status, closed),
-            notices=(),
+            notices=self._notices(),
             states=tuple(solved.state for solved in self.solved),
             return_state=tear,
         )
@@ -370,6 +241,14 @@ class _Pass:
                 message = "the recirculation over several cells did not close"
         return Convergence(status != "not_converged", worst, self.iterations, message)
 
+    def _notices(self) -> tuple[Notice, ...]:
+        asked, got = self.primary.unmixedness, self.distribution.unmixedness
+        if abs(got - asked) <= 0.01 * asked:
+            return ()
+        return (
+            Notice(STREAMS_BY_SQUARE_ROOT.key, "unmixedness asked for", asked, 0.0, got, "primary"),
+        )
+
     def _station(self, place: int) -> Station:
         zone, solved = self.zones[place], self.solved[place]
         state = solved.state
@@ -377,6 +256,7 @@ class _Pass:
         mixed = self._mixed(zone.shares @ state.moles, zone.exit_enthalpy)
         volume = self.primary.volume if cell is None else cell.volume
         specific = zone.throughflow_volume(state)
+        few = zone.exchanging
         return Station(
             name="primary" if cell is None else cell.name,
             start=0.0 if cell is None else cell.start,
@@ -385,10 +265,31 @@ class _Pass:
             temperature=mixed.temperature,
             mass_fractions=mixed.mass_fractions,
             density=1.0 / specific,
+            core=self._part(zone, state, slice(None, few)),
+            beside=None if zone.apart == 0 else self._part(zone, state, slice(few, None)),
             residence_time=volume / (zone.total_flow * specific),
-            stream_temperatures=state.temperatures,
-            stream_shares=zone.shares,
-            burning=solved.burning,
+            stream_temperatures=state.temperatures[:few],
+            stream_shares=zone.flows[:few] / zone.flows[:few].sum(),
+            burning=solved.burning[:few],
+        )
+
+    def _part(self, zone: Zone, state: ZoneState, which: slice) -> Part:
+        """Return some of a zone's streams, mixed."""
+        flows, moles = zone.flows[which], state.moles[which]
+        masses = moles * self.gas.rates.molar_masses
+        temperatures = state.temperatures[which]
+        enthalpies = [
+            self.gas.enthalpy(float(temperature), self.pressure, fractions)
+            for temperature, fractions in zip(temperatures, masses, strict=True)
+        ]
+        bundle = Bundle(flows, moles, np.array(enthalpies))
+        mixed = self._mixed(bundle.mean_moles, bundle.mean_enthalpy)
+        volume = float(flows @ (temperatures * moles.sum(axis=1))) * GAS_CONSTANT / self.pressure
+        return Part(
+            mass_flow=bundle.total_flow,
+            temperature=mixed.temperature,
+            mass_fractions=mixed.mass_fractions,
+            density=bundle.total_flow / volume,
         )
 
     def _mixed(self, moles: Array, enthalpy: float) -> GasState:

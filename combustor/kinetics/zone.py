@@ -46,6 +46,8 @@ class Zone:
         Rate at which the inflows approach their mean during the residence time [1/s]
     heat_loss : float
         Of the whole zone, shared by mass [W]
+    apart : int
+        So many of the last streams keep out of the exchange with the mean.
     """
 
     gas: Gas
@@ -58,6 +60,7 @@ class Zone:
     recirculation: float = 0.0
     mixing: float = 0.0
     heat_loss: float = 0.0
+    apart: int = 0
 
     def __post_init__(self) -> None:
         if (self.volume is None) == (self.residence_time is None):
@@ -108,6 +111,18 @@ class Zone:
         """Fresh inflow, all streams mixed [J/kg]."""
         return float(self.shares @ self.enthalpies)
 
+    @property
+    def exchanging(self) -> int:
+        """Number of streams that mix towards their mean; they come first."""
+        return self.streams - self.apart
+
+    @cached_property
+    def exchange_mean(self) -> tuple[Array, float]:
+        """Fresh moles [kmol/kg] and enthalpy [J/kg] of the exchanging streams, mixed."""
+        few = self.exchanging
+        shares = self.flows[:few] / self.flows[:few].sum()
+        return shares @ self.moles[:few], float(shares @ self.enthalpies[:few])
+
     @cached_property
     def loss_per_pass(self) -> float:
         """Heat lost per mass and pass [J/kg]."""
@@ -138,24 +153,31 @@ class Zone:
             [kmol/kg]
         """
         fresh = self.moles
-        if self.mixing > 0.0 and self.streams > 1:
-            fresh = fresh + self.exchanged(rate) * (self.mean_moles - fresh)
+        if self.mixing > 0.0 and self.exchanging > 1:
+            few = self.exchanging
+            fresh = fresh.copy()
+            fresh[:few] += self.exchanged(rate) * (self.exchange_mean[0] - fresh[:few])
         if self.recirculation == 0.0:
             return fresh
         return (fresh + self.recirculation * mean) / (1.0 + self.recirculation)
 
     def inlet_slope(self, rate: float) -> Array | None:
         """Return d(inlets)/d(rate), or None where the exchange does not depend on it."""
-        if self.mixing == 0.0 or self.streams == 1:
+        if self.mixing == 0.0 or self.exchanging <= 1:
             return None
-        slope = -np.exp(-self.mixing / rate) * self.mixing / rate**2
-        return slope * (self.mean_moles - self.moles) / (1.0 + self.recirculation)
+        few = self.exchanging
+        slope = np.zeros_like(self.moles)
+        slope[:few] = self.exchange_mean[0] - self.moles[:few]
+        slope *= -np.exp(-self.mixing / rate) * self.mixing / rate**2
+        return slope / (1.0 + self.recirculation)
 
     def inlet_enthalpies(self, rate: float) -> Array:
         """Return the enthalpy of what each stream takes in [J/kg]."""
         fresh = self.enthalpies
-        if self.mixing > 0.0 and self.streams > 1:
-            fresh = fresh + self.exchanged(rate) * (self.mean_enthalpy - fresh)
+        if self.mixing > 0.0 and self.exchanging > 1:
+            few = self.exchanging
+            fresh = fresh.copy()
+            fresh[:few] += self.exchanged(rate) * (self.exchange_mean[1] - fresh[:few])
         back = self.recirculation
         return (fresh + back * self.exit_enthalpy) / (1.0 + back)
 
