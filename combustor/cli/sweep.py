@@ -17,7 +17,7 @@ from combustor.report.csv_out import check_free
 from combustor.report.json_out import dumps
 from combustor.report.progress import ProgressLine
 from combustor.report.sweep_data import SWEEP_TABLES, described, sweep_data, sweep_document
-from combustor.report.sweep_picture import check_picture, write_picture
+from combustor.report.sweep_picture import check_folder, check_picture, write_picture
 from combustor.report.sweep_tables import Limits, sweep_report
 from combustor.report.terminal import Page
 from combustor.studies.sweep import Sweep, carried_out, results_name
@@ -146,6 +146,9 @@ def _workers(text: str | None) -> int | None:
 
 def _check_outputs(arguments: argparse.Namespace) -> None:
     check_csv(arguments, SWEEP_TABLES)
+    if arguments.csv:
+        there = (p for p in (Path(arguments.csv), *Path(arguments.csv).parents) if p.exists())
+        check_folder(next(there, Path()), "--csv")
     if arguments.picture:
         check_picture(Path(arguments.picture))
         check_free([Path(arguments.picture)], arguments.force)

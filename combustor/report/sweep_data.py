@@ -101,6 +101,7 @@ def _outcomes(sweep: Sweep) -> Table:
         Field("status", "status", "outcome.status"),
         Field("converged", "converged", "outcome.converged"),
         Field("level", "level", "outcome.level"),
+        Field("gravest", "gravest", "outcome.gravest"),
         *(field.beneath("outcome") for field in OUTCOME.values()),
         Field("reason", "reason", "outcome.reason"),
     )

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import io
+import os
 from collections.abc import Sequence
 from pathlib import Path
 from typing import Any
@@ -31,14 +32,23 @@ def check_picture(path: Path) -> None:
                 "no such kind of picture", f"end it in {', '.join(SUFFIXES)}", _OPTION, str(path)
             )
         )
-    if not path.parent.is_dir():
-        raise InputError(Problem("there is no such folder", "", _OPTION, str(path.parent)))
+    check_folder(path.parent, _OPTION)
     try:
         import matplotlib.figure  # noqa: F401
     except ImportError:
         raise InputError(
             Problem("pictures need matplotlib", "pip install 'combustor[plots]'", _OPTION)
         ) from None
+
+
+def check_folder(folder: Path, option: str) -> None:
+    """Refuse a folder that is not there or cannot be written to."""
+    if not folder.is_dir():
+        raise InputError(Problem("there is no such folder", "make it first", option, str(folder)))
+    if not os.access(folder, os.W_OK):
+        raise InputError(
+            Problem("cannot be written to", "name another folder", option, str(folder))
+        )
 
 
 def write_picture(sweep: Sweep, limits: Limits, path: Path) -> None:
@@ -70,6 +80,15 @@ def picture(drawn: Sequence[Plot], kind: str) -> bytes:
     return buffer.getvalue()
 
 
+def _plain_numbers(axis: Any) -> None:
+    """Write the numbers of a logarithmic axis in full: emissions span few decades."""
+    from matplotlib.ticker import FuncFormatter, LogLocator, NullFormatter
+
+    axis.set_major_locator(LogLocator(base=10.0, subs=(1.0, 1.5, 2.0, 3.0, 5.0, 7.0), numticks=8))
+    axis.set_major_formatter(FuncFormatter(lambda value, _: f"{value:.3g}"))
+    axis.set_minor_formatter(NullFormatter())
+
+
 def _draw(panel: Any, plot: Plot) -> None:
     for number, curve in enumerate(plot.curves):
         x = [place for place, _ in curve.points]
@@ -82,8 +101,10 @@ def _draw(panel: Any, plot: Plot) -> None:
         panel.axvline(plot.limit_across, color="0.4", linestyle="--", linewidth=1)
     if plot.log_across:
         panel.set_xscale("log")
+        _plain_numbers(panel.xaxis)
     if plot.log_up:
         panel.set_yscale("log")
+        _plain_numbers(panel.yaxis)
     panel.set(title=plot.title, xlabel=plot.across, ylabel=plot.up)
     panel.grid(visible=True, alpha=0.3)
     if len(plot.curves) > 1:

@@ -76,6 +76,7 @@ def record_of(sweep: Sweep, indices: Sequence[int], point: str, outcome: Outcome
         "outcome": outcome,
         "status": theme.status(outcome.status),
         "verdict": theme.verdict(outcome.level),
+        "gravest": outcome.gravest if outcome.burning and outcome.level == "act" else "",
     }
 
 
@@ -94,6 +95,7 @@ def trend_table(sweep: Sweep, point: str) -> Table:
         Field("status", "status"),
         *(OUTCOME[name].beneath("outcome") for name in names),
         Field("verdict", "verdict"),
+        *((Field("gravest", "of"),) if any(r["gravest"] for r in shown) else ()),
     )
     marks = {i: r["outcome"].level for i, r in enumerate(shown) if r["outcome"].level != "ok"}
     title = f"Trend at {point} (NOx, CO: dry, 15 % O2)"

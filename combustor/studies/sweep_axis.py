@@ -158,5 +158,5 @@ def _own_unit(found: Sequence[Entry]) -> str:
 
 def _too_many(key: str, count: int) -> InputError:
     return InputError(
-        Problem(f"{count} values", f"at most {MOST_VALUES}: every one is a full rating", key, count)
+        Problem(f"{count} values", f"at most {MOST_VALUES}: every one is a full rating", key)
     )

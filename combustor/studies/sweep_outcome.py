@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import asdict, dataclass, fields
+from math import isfinite
 from typing import Any
 
 from combustor.base.errors import CombustorError, InfeasibleError, InputError
@@ -24,6 +25,8 @@ class Outcome:
     converged : bool
     level : {"ok", "watch", "act"}
         The gravest of its findings.
+    gravest : str
+        What that finding judges; empty where all is well.
     reason : str
         Why there is no result; empty where there is one.
     fuel_flow, fuel_air_ratio, equivalence_ratio :
@@ -44,6 +47,7 @@ class Outcome:
     status: Status
     converged: bool
     level: str
+    gravest: str = ""
     reason: str = ""
     fuel_flow: float | None = None
     fuel_air_ratio: float | None = None
@@ -93,6 +97,7 @@ def outcome_of(rated: PointRating) -> Outcome:
         status=status,
         converged=rated.converged,
         level=level,
+        gravest="" if level == "ok" else _gravest(rated, level),
         reason="" if status == "burning" else _reason(rated),
         fuel_flow=_number(rated.fuel_flow),
         fuel_air_ratio=_number(rated.fuel_air_ratio),
@@ -160,5 +165,9 @@ def _primary(zone: ZoneRecord | None) -> dict[str, float | None]:
     }
 
 
+def _gravest(rated: PointRating, level: str) -> str:
+    return next((finding.what for finding in rated.findings if finding.level == level), "")
+
+
 def _number(value: Any) -> float | None:
-    return None if value is None else float(value)
+    return float(value) if value is not None and isfinite(value) else None
