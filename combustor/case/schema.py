@@ -140,6 +140,8 @@ class Targets(Table):
     swirler_vane_shape: Literal["flat", "curved"] = "flat"
     swirler_hub_diameter: k.HubDiameter | None = None
     swirlers: k.Holes | None = None
+    pilot_fuel: k.Fraction = 0.10
+    premixer_time: k.ResidenceTime = 1.0e-3
     hole_edge: Literal["plain", "plunged"] = "plain"
     primary_holes: k.Holes | None = None
     secondary_holes: k.Holes | None = None

@@ -2,7 +2,8 @@
 
 Swirler, premixer and dome air belong to the zone they stand in; of the primary row a stated
 share turns upstream into the primary zone; every other row counts from the zone it stands in;
-film air counts as far as it has mixed; leakage counts at the exit only.
+film air counts as far as it has mixed, by the film's own effectiveness where that is known;
+leakage counts at the exit only.
 """
 
 from __future__ import annotations
@@ -10,7 +11,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from combustor.base.method import Method
-from combustor.hardware.metal import Hardware, LinerWall, Opening
+from combustor.hardware.film_decay import decay
+from combustor.hardware.metal import AxialProfile, Hardware, LinerWall, Opening
 
 PRIMARY_JET_SHARE = Method(
     key="primary-jet-share",
@@ -22,10 +24,10 @@ PRIMARY_JET_SHARE = Method(
 FILM_MIXING = Method(
     key="film-mixing",
     quantity="share of a film's air that has mixed with the core, by distance over slot height",
-    source="what the film has lost of its effectiveness: 1 - 1.28 (mu ratio)^0.15 (t/s)^-0.2 "
-    "(x/s)^-0.2, Ballal & Lefebvre 1972-73, at viscosity ratio 0.53 and lip ratio 0.4",
+    source="what the film has lost of its effectiveness, since a film that mixes evenly holds "
+    "that share of its own air; before the wall was marched, 1 - 1.28 (mu ratio)^0.15 "
+    "(t/s)^-0.2 (x/s)^-0.2, Ballal & Lefebvre 1972-73, at viscosity ratio 0.53 and lip ratio 0.4",
     reading="from memory",
-    validity={"distance_over_height": (0.0, 150.0)},
     note="nothing has mixed while the film is whole, to 5.4 slot heights",
 )
 FILM_DECAY = 1.28 * 0.53**0.15 * 0.4**-0.2
@@ -53,7 +55,11 @@ def slot_height(hardware: Hardware, opening: Opening) -> float:
 
 
 def mixed_share(
-    hardware: Hardware, opening: Opening, station: float, primary_jet_share: float = 0.5
+    hardware: Hardware,
+    opening: Opening,
+    station: float,
+    primary_jet_share: float = 0.5,
+    films: Mapping[str, AxialProfile] | None = None,
 ) -> float:
     """Return the share of an opening's air that counts as mixed at a station.
 
@@ -68,6 +74,8 @@ def mixed_share(
         Axial position inside the liner [m]
     primary_jet_share : float
         [-]
+    films : mapping of str to AxialProfile or None
+        Share of each film's air still at the wall, by opening; falling behind the slot.
 
     Returns
     -------
@@ -80,10 +88,12 @@ def mixed_share(
         distance = station - opening.station
         if distance <= 0.0:
             return 0.0
+        if films is not None and opening.name in films:
+            return 1.0 - float(films[opening.name].at(station))
         height = slot_height(hardware, opening)
         if height <= 0.0:
             return 1.0
-        return max(0.0, 1.0 - FILM_DECAY * (distance / height) ** -0.2)
+        return max(0.0, 1.0 - FILM_DECAY * float(decay(distance / height)))
     if opening.role == "primary" and station <= _primary_end(hardware):
         return primary_jet_share
     if opening.role in FRONT_ROLES:
@@ -93,7 +103,10 @@ def mixed_share(
 
 
 def zone_air(
-    hardware: Hardware, flows: Mapping[str, float], primary_jet_share: float = 0.5
+    hardware: Hardware,
+    flows: Mapping[str, float],
+    primary_jet_share: float = 0.5,
+    films: Mapping[str, AxialProfile] | None = None,
 ) -> dict[str, float]:
     """Return the share of all air that counts in each zone, cumulative along the liner.
 
@@ -107,6 +120,8 @@ def zone_air(
         Flow of every opening by name; any common unit.
     primary_jet_share : float
         Share of the primary row that turns upstream [-]
+    films : mapping of str to AxialProfile or None
+        Share of each film's air still at the wall, as the wall was marched; else `FILM_MIXING`.
 
     Returns
     -------
@@ -120,7 +135,7 @@ def zone_air(
         for opening in hardware.openings:
             if zone.name == "primary" and opening.role in FILM_ROLES:
                 continue
-            share = mixed_share(hardware, opening, zone.end, primary_jet_share)
+            share = mixed_share(hardware, opening, zone.end, primary_jet_share, films)
             mixed += share * flows[opening.name]
         shares[zone.name] = mixed / total
     shares["exit"] = 1.0

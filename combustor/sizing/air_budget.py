@@ -38,7 +38,10 @@ LEAST_DILUTION = 0.04
 
 @dataclass(frozen=True)
 class AirBudget:
-    """Shares of all air, by role; they sum to one."""
+    """Shares of all air, by role; they sum to one.
+
+    ``spare`` is what a lean front end had left over for film or dilution; it is in one of them.
+    """
 
     swirler: float
     dome: float
@@ -48,6 +51,7 @@ class AirBudget:
     film: float
     leak: float
     premixer: float = 0.0
+    spare: float = 0.0
 
     @property
     def front(self) -> float:

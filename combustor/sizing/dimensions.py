@@ -8,15 +8,25 @@ from collections.abc import Iterator
 from combustor.airflow.jets import PENETRATION_ROW
 from combustor.hardware.metal import Opening
 from combustor.hardware.zone_air import PRIMARY_JET_SHARE
-from combustor.sizing import cooling, diffuser, film_slots, liner_ratio, rows, swirler, zones
+from combustor.sizing import (
+    cooling,
+    diffuser,
+    film_slots,
+    front_ends,
+    liner_ratio,
+    rows,
+    swirler,
+    zones,
+)
 from combustor.sizing.air_budget import AIR_BUDGET, DOME_SHARES, PREFERRED_DOME, PREFERRED_SWIRLER
+from combustor.sizing.burnout import BURNOUT
 from combustor.sizing.drill import DRILL_STEPS
 from combustor.sizing.exit_pattern import pattern_factor_of
 from combustor.sizing.fire import FUEL_DEMAND, FUEL_DEMAND_SIMPLE
 from combustor.sizing.loop import AREAS
 from combustor.sizing.record import Candidate, Dimension
 from combustor.sizing.rounding import Rounded
-from combustor.sizing.sketch import SWIRLER
+from combustor.sizing.sketch import PREMIXER, SWIRLER
 from combustor.sizing.state import State, Task
 
 
@@ -39,6 +49,7 @@ def dimensions_of(task: Task, state: State, rounded: Rounded) -> tuple[Dimension
         _zones(task, state, rounded),
         _budget(task, state),
         _swirler(task, state, rounded),
+        _premixer(task, rounded),
         _rows(task, state, rounded),
         _films(task, state, rounded),
     )
@@ -161,13 +172,23 @@ def _zones(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         ),
         f"{primary / height:.2f} liner diameters",
     )
+    note, by_rule = f"{(secondary - primary) / height:.2f} liner heights", zones.SECONDARY_LENGTH
+    rival = None
+    if task.burnout is not None:
+        by_rule = BURNOUT
+        note += (
+            f"; CO from {1e6 * task.burnout.at_flame:.0f} to {1e6 * task.burnout.wanted:.0f} ppm "
+            f"in {1e3 * task.burnout.time:.1f} ms"
+        )
+        usual = zones.SECONDARY_LENGTH_RATIO * height
+        rival = Candidate(usual, zones.SECONDARY_LENGTH, "blind to the flame")
     yield Dimension(
         "secondary zone length",
         secondary - primary,
         "length",
-        zones.SECONDARY_LENGTH if targets.secondary_length is None else stated,
-        None,
-        f"{(secondary - primary) / height:.2f} liner diameters",
+        by_rule if targets.secondary_length is None else stated,
+        rival,
+        note,
     )
     yield _dilution_length(task, state, end - secondary)
     reached = pattern_factor_of(rounded.hardware, task.duty.inlet, rounded.split)
@@ -215,10 +236,15 @@ def _budget(task: Task, state: State) -> Iterator[Dimension]:
         AIR_BUDGET if targets.dome_air is None else stated,
         _usual(shares.dome, PREFERRED_DOME),
     )
+    if state.sketch.premixing is not None:
+        yield Dimension("premixer air", shares.premixer, "fraction", AIR_BUDGET)
     turned = f"{task.case.model.primary_jet_share:.0%} of it turns upstream"
-    yield Dimension("primary row air", shares.primary, "fraction", PRIMARY_JET_SHARE, None, turned)
-    yield Dimension("secondary row air", shares.secondary, "fraction", AIR_BUDGET)
-    yield Dimension("dilution row air", shares.dilution, "fraction", AIR_BUDGET)
+    for row in state.sketch.rows:
+        method, note = AIR_BUDGET, ""
+        if row.name == "primary":
+            method, note = PRIMARY_JET_SHARE, turned
+        share = shares.of_row(row.name)
+        yield Dimension(f"{row.name} row air", share, "fraction", method, None, note)
     yield Dimension(
         "film air",
         shares.film,
@@ -227,6 +253,51 @@ def _budget(task: Task, state: State) -> Iterator[Dimension]:
         Candidate(cooling.USUAL_FILM_AIR, cooling.FILM_AIR_SHARE, "a range, blind to the duty"),
     )
     yield Dimension("leakage", shares.leak, "fraction", stated)
+
+
+def _premixer(task: Task, rounded: Rounded) -> Iterator[Dimension]:
+    premixing = rounded.sketch.premixing
+    if premixing is None:
+        return
+    opening, flow = rounded.hardware.opening(PREMIXER), rounded.split.opening(PREMIXER)
+    vanes = opening.swirler
+    assert vanes is not None
+    velocity = premixer_velocity(task, rounded)
+    yield Dimension(
+        "premixer area",
+        opening.area,
+        "area",
+        AREAS,
+        None,
+        f"one of {opening.count * task.section.cans}; passes "
+        f"{flow.mass_flow / task.duty.inlet.mass_flow:.1%} of the air",
+    )
+    practice = front_ends.PREMIXER_PRACTICE
+    yield Dimension("premixer hub diameter", vanes.hub_diameter, "length", AREAS, None, "to 0.1 mm")
+    yield Dimension("premixer tip diameter", vanes.tip_diameter, "length", AREAS, None, "to 0.1 mm")
+    yield Dimension("premixer velocity", velocity, "velocity", AREAS)
+    yield Dimension(
+        "premixer length",
+        premixing.length,
+        "length",
+        practice,
+        None,
+        f"{1e3 * premixing.length / velocity:.2f} ms at the design point",
+    )
+    share = premixing.pilot_fuel
+    yield Dimension("pilot fuel", share, "fraction", front_ends.LEAN_PRACTICE)
+    own = (1.0 - share) * task.duty.overall * task.duty.inlet.mass_flow / flow.mass_flow
+    yield Dimension("premixer equivalence ratio", own, "ratio", AIR_BUDGET)
+    pilot = rounded.split.opening(SWIRLER).mass_flow
+    rich = share * task.duty.overall * task.duty.inlet.mass_flow / pilot
+    yield Dimension("pilot equivalence ratio", rich, "ratio", AIR_BUDGET)
+
+
+def premixer_velocity(task: Task, rounded: Rounded) -> float:
+    """Return the axial velocity of the air through the premixing passage [m/s]."""
+    opening, flow = rounded.hardware.opening(PREMIXER), rounded.split.opening(PREMIXER)
+    area = opening.count * opening.area * task.section.cans
+    return flow.mass_flow / (flow.jet_density * area)
 
 
 def _usual(share: float, usual: float) -> Candidate | None:

@@ -6,16 +6,17 @@ import math
 from collections.abc import Mapping
 
 from combustor.sizing import film_slots
-from combustor.sizing.air_budget import AirBudget
+from combustor.sizing.air_budget import LEAST_DILUTION, AirBudget
 from combustor.sizing.diffuser import FAIRED_COEFFICIENT
 from combustor.sizing.drill import nearest_drill
 from combustor.sizing.frame import Frame, LossShares, frame_of
+from combustor.sizing.front_ends import DIFFUSION_ROWS, PREMIXER_VELOCITY_SHARE, row_names
 from combustor.sizing.reference_area import corrected_loss
 from combustor.sizing.rows import RowPlan
 from combustor.sizing.section import Section
 from combustor.sizing.sketch import (
+    Premixing,
     Row,
-    RowName,
     Sheet,
     Sketch,
     SlotRing,
@@ -24,7 +25,6 @@ from combustor.sizing.sketch import (
 from combustor.sizing.state import State, Task, shares_by_opening
 from combustor.sizing.swirler import HUB_RATIO, SWIRLER_PITCH, VANE_LOSS_COEFFICIENT
 
-ROW_NAMES: tuple[RowName, ...] = ("primary", "secondary", "dilution")
 DOME_DRILL_SHARE = 0.012
 SMALLEST_DOME_DRILL = 1.5e-3
 _FIRST_FILM = 0.28
@@ -40,10 +40,16 @@ def first_state(task: Task) -> State:
     loss = _first_loss(task, loss_target)
     shares = _first_budget(task)
     frame = frame_of(
-        task.case, task.duty, task.section, task.casing, loss, shares.front, is_firm=False
+        task.case,
+        task.duty,
+        task.section,
+        task.casing,
+        loss,
+        shares.front,
+        is_firm=False,
+        burnout=task.burnout,
     )
-    hole = 0.08 * frame.liner_height
-    plans: dict[str, RowPlan] = {name: RowPlan(8, 8.0, 8.0, hole, 0.0) for name in ROW_NAMES}
+    plans = plans_for(task, frame, shares, {})
     places = [frame.liner_length * place / _FIRST_SLOTS for place in range(_FIRST_SLOTS)]
     sketch = draw_sketch(task, frame, plans, film_slots.slot_rings(places, _FIRST_HEIGHT))
     films = even_films(task, sketch, shares.film)
@@ -59,6 +65,15 @@ def first_state(task: Task) -> State:
         None,
         loss,
     )
+
+
+def plans_for(
+    task: Task, frame: Frame, shares: AirBudget, plans: Mapping[str, RowPlan]
+) -> dict[str, RowPlan]:
+    """Return the plans of the rows there are to be; a new one starts from usual holes."""
+    usual = RowPlan(8, 8.0, 8.0, 0.08 * frame.liner_height, 0.0)
+    names = row_names(task.front_end, shares.spare >= LEAST_DILUTION)
+    return {name: plans.get(name, usual) for name in names}
 
 
 def draw_sketch(
@@ -102,7 +117,26 @@ def draw_sketch(
         ),
         drill_step=targets.drill_step,
         swirlers=swirlers_of(task.section, frame.liner_height, targets.swirlers),
+        premixing=_premixing(task),
     )
+
+
+def _premixing(task: Task) -> Premixing | None:
+    targets = task.case.targets
+    if task.front_end != "lean-premixed":
+        return None
+    vanes = VanePack(
+        targets.swirler_vane_angle,
+        targets.swirler_vane_count,
+        targets.swirler_vane_thickness,
+        VANE_LOSS_COEFFICIENT[targets.swirler_vane_shape],
+        HUB_RATIO,
+    )
+    # vanes leave about six tenths of the ideal velocity through the passage
+    drop = 0.8 * (targets.pressure_loss or 0.0) * task.duty.inlet.pressure
+    velocity = PREMIXER_VELOCITY_SHARE * math.sqrt(2.0 * drop / task.duty.density)
+    length = round(velocity * targets.premixer_time, 3)
+    return Premixing(vanes, targets.pilot_fuel, length)
 
 
 def swirlers_of(section: Section, liner_height: float, stated: int | None) -> int:
@@ -118,15 +152,23 @@ def swirlers_of(section: Section, liner_height: float, stated: int | None) -> in
 def placed(frame: Frame, plans: Mapping[str, RowPlan]) -> tuple[Row, ...]:
     """Return the rows where they stand, to whole millimetres; see `rows.ROW_POSITION`."""
     primary_end, secondary_end, _ = frame.zone_ends
-    radius = {name: 0.5 * plan.hole_diameter for name, plan in plans.items()}
     third = primary_end + (secondary_end - primary_end) / 3.0
-    clear = primary_end + radius["secondary"] + 2.0 * film_slots.BAND_MARGIN
-    places: dict[RowName, float] = {
-        "primary": math.floor(1e3 * (primary_end - radius["primary"])) / 1e3,
-        "secondary": math.ceil(1e3 * max(third, clear)) / 1e3,
-        "dilution": math.ceil(1e3 * (secondary_end + radius["dilution"])) / 1e3,
-    }
-    return tuple(Row(name, places[name], plans[name].count) for name in ROW_NAMES)
+    margin = 2.0 * film_slots.BAND_MARGIN
+    found = []
+    for name in DIFFUSION_ROWS:
+        if name not in plans:
+            continue
+        radius = 0.5 * plans[name].hole_diameter
+        if name == "primary":
+            place = math.floor(1e3 * (primary_end - radius)) / 1e3
+        elif name == "dilution":
+            place = math.ceil(1e3 * (secondary_end + radius)) / 1e3
+        else:
+            # a quench row opens its zone; behind a primary row there is no room to
+            start = third if "primary" in plans else 0.0
+            place = math.ceil(1e3 * max(start, primary_end + radius + margin)) / 1e3
+        found.append(Row(name, place, plans[name].count))
+    return tuple(found)
 
 
 def band(row: Row, plan: RowPlan) -> tuple[float, float]:
@@ -164,5 +206,31 @@ def _first_budget(task: Task) -> AirBudget:
     front = min(0.16, 0.8 * primary_air)
     row = (primary_air - front) / task.case.model.primary_jet_share
     row = min(row, 0.9 - front - film)
+    if task.front_end != "diffusion":
+        return _first_other(task, film)
     rest = 1.0 - front - row - film - targets.leakage
     return AirBudget(0.6 * front, 0.4 * front, row, 0.2 * rest, 0.8 * rest, film, targets.leakage)
+
+
+def _first_other(task: Task, film: float) -> AirBudget:
+    """Return usual shares of a front end without a primary row."""
+    targets = task.case.targets
+    front = min(task.duty.overall / targets.equivalence_ratio.primary, 0.85)
+    film = min(film, 0.5 * (1.0 - front - targets.leakage))
+    rest = 1.0 - front - film - targets.leakage
+    if task.front_end == "rich-lean":
+        return AirBudget(
+            0.7 * front, 0.3 * front, 0.0, 0.6 * rest, 0.4 * rest, film, targets.leakage
+        )
+    has_row = rest >= LEAST_DILUTION
+    return AirBudget(
+        swirler=0.08 * front,
+        dome=0.08 * front,
+        primary=0.0,
+        secondary=0.0,
+        dilution=rest if has_row else 0.0,
+        film=film if has_row else film + rest,
+        leak=targets.leakage,
+        premixer=0.84 * front,
+        spare=rest,
+    )

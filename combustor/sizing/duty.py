@@ -33,6 +33,8 @@ class Duty:
         [J/kg]
     points : tuple of LoadingPoint
         Every operating point, for chemical loading.
+    supply : Supply
+        Air and fuel as they arrive.
     """
 
     name: str
@@ -43,6 +45,7 @@ class Duty:
     table: HotGas
     lower_heating_value: float
     points: tuple[LoadingPoint, ...]
+    supply: Supply
 
     @property
     def density(self) -> float:
@@ -93,6 +96,7 @@ def duty_of(case: Case, fuel: Fuel, gas: Gas) -> Duty:
             LoadingPoint(p.name, p.kind, p.air_flow, p.inlet_pressure, p.inlet_temperature)
             for p in case.points
         ),
+        supply=supply,
     )
 
 

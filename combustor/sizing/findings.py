@@ -7,14 +7,23 @@ from collections.abc import Iterator
 
 from combustor.base.finding import Finding, Level
 from combustor.base.method import Method
-from combustor.sizing import cooling, diffuser, film_slots, liner_ratio, rows, swirler, zones
+from combustor.sizing import (
+    cooling,
+    diffuser,
+    film_slots,
+    front_ends,
+    liner_ratio,
+    rows,
+    swirler,
+    zones,
+)
 from combustor.sizing.casing import (
     ATMOSPHERE,
     HEAT_RELEASE,
     HIGHEST_HEAT_RELEASE,
     loading_of,
 )
-from combustor.sizing.dimensions import annulus_velocity
+from combustor.sizing.dimensions import annulus_velocity, premixer_velocity
 from combustor.sizing.exit_pattern import pattern_factor_of
 from combustor.sizing.reference_area import (
     CHEMICAL_LOADING,
@@ -63,6 +72,7 @@ def findings_of(task: Task, state: State, rounded: Rounded) -> tuple[Finding, ..
         _diffuser(task, state, rounded),
         _jets(task, state, rounded),
         _swirler(rounded),
+        _front_end(task, state, rounded),
         _liner(task, rounded),
         _water(task),
     )
@@ -337,6 +347,40 @@ def _swirler(rounded: Rounded) -> Iterator[Finding]:
     )
     for notice in notices:
         yield Finding("watch", f"swirler {notice.quantity}", notice.value, advice=str(notice))
+
+
+def _front_end(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
+    wanted, budget = task.case.targets.equivalence_ratio, state.budget
+    practices: list[tuple[Method, str, str, float]] = []
+    if task.front_end == "rich-lean":
+        practice = front_ends.RICH_LEAN_PRACTICE
+        practices = [
+            (practice, "rich", "equivalence ratio of the rich zone", wanted.primary),
+            (practice, "lean", "equivalence ratio behind the quench row", wanted.secondary),
+        ]
+    elif task.front_end == "lean-premixed":
+        lean, made = front_ends.LEAN_PRACTICE, front_ends.PREMIXER_PRACTICE
+        velocity = premixer_velocity(task, rounded)
+        assert rounded.sketch.premixing is not None
+        time = rounded.sketch.premixing.length / velocity
+        practices = [
+            (lean, "lean", "equivalence ratio of the lean flame", wanted.primary),
+            (lean, "front_share", "share of the air through the front end", budget.front),
+            (made, "premixer_velocity", "velocity in the premixer, m/s", velocity),
+            (made, "residence_time", "residence time in the premixer, s", time),
+        ]
+    for method, quantity, what, value in practices:
+        low, high = method.validity[quantity]
+        is_usual = low <= value <= high
+        yield Finding(
+            "ok" if is_usual else "watch",
+            what,
+            value,
+            high if value > high else low,
+            "-",
+            "" if is_usual else f"outside {low:g} to {high:g}, the usual range",
+            method.citation,
+        )
 
 
 def _liner(task: Task, rounded: Rounded) -> Iterator[Finding]:

@@ -10,6 +10,7 @@ from combustor.base.method import Method, Notice
 from combustor.case.schema import Case, Targets
 from combustor.sizing import liner_ratio as ratios
 from combustor.sizing import zones
+from combustor.sizing.burnout import Burnout
 from combustor.sizing.casing import Casing
 from combustor.sizing.diffuser import STATED, DiffuserShape, choose
 from combustor.sizing.duty import Duty
@@ -116,6 +117,7 @@ def frame_of(
     loss: LossShares,
     front_share: float,
     is_firm: bool = True,
+    burnout: Burnout | None = None,
 ) -> Frame:
     """Return liner, diffuser and lengths.
 
@@ -131,6 +133,8 @@ def frame_of(
         Share of the air through swirler and dome [-]
     is_firm : bool
         False while the losses are only guessed: a liner a little too long is let pass.
+    burnout : Burnout or None
+        Of a lean flame; its length takes the place of the secondary zone's.
 
     Raises
     ------
@@ -146,7 +150,7 @@ def frame_of(
         targets.pattern_factor, loss_factor, section.is_round
     )
     needed = max(needed, _shortest(targets))
-    builder = _Builder(case, duty, section, casing, needed, is_firm)
+    builder = _Builder(case, duty, section, casing, needed, is_firm, front_share, burnout)
     ratio, method, rival, note = _liner_ratio(builder, head, front_share)
     height = round(section.height(ratio * casing.area), 3)
     shape, other = builder.diffuser(height)
@@ -186,6 +190,8 @@ class _Builder:
     casing: Casing
     length_ratio: float
     is_firm: bool
+    front_share: float
+    burnout: Burnout | None
 
     def annulus_area(self, height: float) -> float:
         outside = height + 2.0 * self.case.targets.sheet_thickness
@@ -218,11 +224,32 @@ class _Builder:
             return None
         return sum(length for length in stated if length is not None)
 
+    def secondary_length(self, height: float) -> float:
+        """Return the secondary zone: stated, half a height, or what burns CO out."""
+        targets = self.case.targets
+        if targets.secondary_length is not None:
+            return targets.secondary_length
+        shortest = zones.SECONDARY_LENGTH_RATIO * height
+        if self.burnout is None:
+            return shortest
+        flow = self.front_share * self.duty.inlet.mass_flow + self.duty.fuel_flow
+        velocity = flow / (self.burnout.density * self.section.area(height))
+        return max(shortest, velocity * self.burnout.time)
+
+    def needed_length(self, height: float) -> float:
+        """Return the liner length a height needs."""
+        stated = self.stated_length()
+        if stated is not None:
+            return stated
+        by_law = self.length_ratio * height
+        if self.burnout is None:
+            return by_law
+        ends = zones.PRIMARY_LENGTH_RATIO + LEAST_DILUTION_RATIO
+        # a whole millimetre a zone for rounding
+        return max(by_law, ends * height + self.secondary_length(height) + 2e-3)
+
     def fits(self, height: float) -> bool:
-        length = self.stated_length()
-        if length is None:
-            length = self.length_ratio * height
-        return length <= self.room(height)
+        return self.needed_length(height) <= self.room(height)
 
 
 def _shortest(targets: Targets) -> float:
@@ -337,13 +364,19 @@ def _check_length(builder: _Builder, ratio: float) -> None:
     room = builder.room(height)
     targets = builder.case.targets
     stated = builder.stated_length()
-    needed = builder.length_ratio * height if stated is None else stated
+    needed = builder.needed_length(height)
     reason = (
         "the stated zone lengths add up to"
         if stated is not None
         else f"a pattern factor of {targets.pattern_factor:.3g} needs a liner of "
         f"{builder.length_ratio:.2f} liner heights, at a liner area ratio of {ratio:.2f}"
     )
+    if builder.burnout is not None and stated is None:
+        reason = (
+            f"flame, burn-out of CO to {1e6 * builder.burnout.wanted:.0f} ppm in "
+            f"{1e3 * builder.burnout.time:.1f} ms and the exit need, at a liner area ratio of "
+            f"{ratio:.2f},"
+        )
     raise InfeasibleError(
         (
             f"{reason} {1e3 * needed:.0f} mm",
@@ -360,7 +393,7 @@ def _zone_ends(
 ) -> tuple[float, float, float]:
     targets = builder.case.targets
     primary = _whole(targets.primary_length or zones.PRIMARY_LENGTH_RATIO * height)
-    secondary = _whole(targets.secondary_length or zones.SECONDARY_LENGTH_RATIO * height)
+    secondary = _whole(builder.secondary_length(height))
     if targets.dilution_length is not None:
         dilution = _whole(targets.dilution_length)
     else:

@@ -14,14 +14,16 @@ from combustor.hardware.zone_air import mixed_share
 from combustor.sizing import cooling, film_slots, wall_sides
 from combustor.sizing.air_budget import AirBudget, BudgetDemand, budget
 from combustor.sizing.cooling import FilmPlan
-from combustor.sizing.draft import band, draw_sketch, placed
+from combustor.sizing.draft import band, draw_sketch, placed, plans_for
 from combustor.sizing.exit_pattern import liner_drop
 from combustor.sizing.frame import LossShares, frame_of
+from combustor.sizing.front_ends import lean_budget, rich_budget
 from combustor.sizing.loop import Aim, Fit, first_areas, fit_areas
 from combustor.sizing.profile import LinerProfile
 from combustor.sizing.rows import RowConditions, RowPlan, plan_row
 from combustor.sizing.sketch import (
     DOME,
+    PREMIXER,
     SWIRLER,
     Row,
     Sketch,
@@ -47,8 +49,11 @@ def next_state(task: Task, state: State, frozen: bool) -> State:
             state.loss,
             state.budget.front,
             is_firm=state.fit is not None,
+            burnout=task.burnout,
         )
-        sketch = draw_sketch(task, frame, state.plans, state.sketch.slots)
+        plans = plans_for(task, frame, state.budget, state.plans)
+        sketch = draw_sketch(task, frame, plans, state.sketch.slots)
+        state = replace(state, plans=plans)
     shares = shares_by_opening(state.budget, sketch, state.films)
     flux = _metering_flux(task, state)
     sketch, plan = _cool(task, sketch, state.plans, shares, flux, state.films if frozen else None)
@@ -91,7 +96,8 @@ def _cool(
     gas = wall_sides.gas_side(
         sketch, profile, inlet, duty.fuel_flow, inlet.pressure, duty.stoichiometric
     )
-    air = wall_sides.annulus_side(sketch, profile, inlet, shares[SWIRLER] + shares[DOME])
+    front = sum(shares.get(name, 0.0) for name in (SWIRLER, PREMIXER, DOME))
+    air = wall_sides.annulus_side(sketch, profile, inlet, front)
     wanted = targets.wall_temperature
     if start is not None:
         return sketch, cooling.plan_films(sketch, wall, gas, air, inlet, wanted, flux, start)
@@ -126,19 +132,22 @@ def _budget(task: Task, sketch: Sketch, films: tuple[float, ...]) -> AirBudget:
         flow * mixed_share(metal, metal.opening(sketch.names(ring.name)[0]), end)
         for ring, flow in zip(sketch.slots, films, strict=True)
     )
-    return budget(
-        BudgetDemand(
-            overall=task.duty.overall,
-            primary=targets.equivalence_ratio.primary,
-            secondary=targets.equivalence_ratio.secondary,
-            primary_jet_share=task.case.model.primary_jet_share,
-            film=sum(films) / air,
-            film_mixed=mixed / air,
-            leak=targets.leakage,
-            swirler=targets.swirler_air,
-            dome=targets.dome_air,
-        )
+    demand = BudgetDemand(
+        overall=task.duty.overall,
+        primary=targets.equivalence_ratio.primary,
+        secondary=targets.equivalence_ratio.secondary,
+        primary_jet_share=task.case.model.primary_jet_share,
+        film=sum(films) / air,
+        film_mixed=mixed / air,
+        leak=targets.leakage,
+        swirler=targets.swirler_air,
+        dome=targets.dome_air,
     )
+    if task.front_end == "rich-lean":
+        return rich_budget(demand)
+    if task.front_end == "lean-premixed":
+        return lean_budget(demand, targets.pilot_fuel, bool(sketch.rows))
+    return budget(demand)
 
 
 def _rows(

@@ -101,10 +101,11 @@ def _solve(
 def _zones(task: Task, hardware: Hardware, flows: Mapping[str, float]) -> tuple[ZoneTarget, ...]:
     air = zone_air(hardware, flows, task.case.model.primary_jet_share)
     wanted = task.case.targets.equivalence_ratio
-    return (
-        ZoneTarget("primary", wanted.primary, task.duty.overall / air["primary"]),
-        ZoneTarget("secondary", wanted.secondary, task.duty.overall / air["secondary"]),
-    )
+    primary = ZoneTarget("primary", wanted.primary, task.duty.overall / air["primary"])
+    if task.front_end == "lean-premixed":
+        return (primary,)
+    reached = task.duty.overall / air["secondary"]
+    return (primary, ZoneTarget("secondary", wanted.secondary, reached))
 
 
 def _moves(

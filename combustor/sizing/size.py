@@ -8,10 +8,11 @@ from combustor.case.schema import Case, Combustor
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.sizing.air_budget import PREFERRED_DOME, PREFERRED_SWIRLER
+from combustor.sizing.burnout import burnout_of
 from combustor.sizing.casing import casing_of
 from combustor.sizing.dimensions import dimensions_of
 from combustor.sizing.draft import first_state
-from combustor.sizing.duty import duty_of
+from combustor.sizing.duty import Duty, duty_of
 from combustor.sizing.findings import findings_of
 from combustor.sizing.frame import highest_annulus_velocity
 from combustor.sizing.passes import next_state
@@ -24,6 +25,11 @@ FREE_PASSES = 8
 FROZEN_PASSES = 12
 SETTLED = 1e-5
 LEAST_JET_SHARE = 0.2
+FRONT_END_RANGE = {
+    "diffusion": (0.3, 2.0),
+    "rich-lean": (1.15, 2.5),
+    "lean-premixed": (0.3, 0.8),
+}
 
 
 def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
@@ -46,7 +52,7 @@ def size(case: Case, fuel: Fuel, gas: Gas) -> Design:
     Raises
     ------
     InputError
-        A layout or front end that sizing does not know, or an entry it needs is missing.
+        An entry that sizing needs is missing, or does not go with the front end.
     InfeasibleError
         The targets cannot be met together; carries the chain of causes.
     """
@@ -78,9 +84,20 @@ def task_of(case: Case, fuel: Fuel, gas: Gas) -> Task:
         case.targets.pressure_loss,
         room_of(case.combustor),
         highest_annulus_velocity(duty, case.targets),
-        1.0 - PREFERRED_SWIRLER - PREFERRED_DOME,
+        1.0 - _front_share(case, duty),
     )
-    return Task(case, duty, section, casing)
+    burnout = None
+    if case.targets.front_end == "lean-premixed":
+        wanted = case.targets.equivalence_ratio.primary
+        burnout = burnout_of(case, fuel, gas, duty.supply, duty.fuel_flow, wanted)
+    return Task(case, duty, section, casing, burnout)
+
+
+def _front_share(case: Case, duty: Duty) -> float:
+    """Return the share of the air that does not pass the annulus, before any budget."""
+    if case.targets.front_end == "diffusion":
+        return PREFERRED_SWIRLER + PREFERRED_DOME
+    return min(duty.overall / case.targets.equivalence_ratio.primary, 0.9)
 
 
 def section_of(combustor: Combustor) -> Section:
@@ -133,16 +150,18 @@ def refuse_unsized(case: Case) -> None:
     """
     combustor, targets = case.combustor, case.targets
     problems = []
-    if targets.front_end != "diffusion":
+    low, high = FRONT_END_RANGE[targets.front_end]
+    if not low <= targets.equivalence_ratio.primary <= high:
         problems.append(
             Problem(
-                "sizing knows diffusion front ends only",
-                'set front_end = "diffusion", or state the metal under [hardware]',
-                "targets.front_end",
-                targets.front_end,
+                f"not that of a {targets.front_end} front end",
+                f"{low} to {high}",
+                "targets.equivalence_ratio.primary",
+                targets.equivalence_ratio.primary,
             )
         )
-    if case.model.primary_jet_share < LEAST_JET_SHARE:
+    is_diffusion = targets.front_end == "diffusion"
+    if is_diffusion and case.model.primary_jet_share < LEAST_JET_SHARE:
         problems.append(
             Problem(
                 "too little of the primary row turns upstream to size the row by",

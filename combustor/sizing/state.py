@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from combustor.case.schema import Case
 from combustor.hardware.metal import Hardware
 from combustor.sizing.air_budget import AirBudget
+from combustor.sizing.burnout import Burnout
 from combustor.sizing.casing import Casing
 from combustor.sizing.cooling import FilmPlan
 from combustor.sizing.duty import Duty
@@ -31,12 +32,18 @@ CROSS_FIRE_SHARE = 0.25
 
 @dataclass(frozen=True)
 class Task:
-    """What stays the same from pass to pass."""
+    """What stays the same from pass to pass; ``burnout`` is a lean flame's."""
 
     case: Case
     duty: Duty
     section: Section
     casing: Casing
+    burnout: Burnout | None = None
+
+    @property
+    def front_end(self) -> str:
+        """The front end asked for."""
+        return self.case.targets.front_end
 
 
 @dataclass(frozen=True)
