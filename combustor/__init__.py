@@ -10,7 +10,7 @@ from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from combustor.api import find_fuel, flame, rate, size
+    from combustor.api import comply, find_fuel, flame, rate, size
     from combustor.base.errors import (
         CombustorError,
         InfeasibleError,
@@ -36,6 +36,7 @@ _HOMES = {
     "NotConvergedError": "combustor.base.errors",
     "PointRating": "combustor.rating.record",
     "Ratings": "combustor.rating.record",
+    "comply": "combustor.api",
     "find_fuel": "combustor.api",
     "flame": "combustor.api",
     "fuel_of": "combustor.fuel.of_case",
@@ -56,6 +57,7 @@ __all__ = [
     "PointRating",
     "Ratings",
     "__version__",
+    "comply",
     "find_fuel",
     "flame",
     "fuel_of",

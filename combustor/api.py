@@ -10,6 +10,7 @@ if TYPE_CHECKING:
     from combustor.fuel.record import Fuel
     from combustor.report.frame import RatedCase
     from combustor.sizing.record import Design
+    from combustor.studies.comply import ComplyCheck
     from combustor.studies.flame import Flame
 
 
@@ -63,6 +64,25 @@ def rate(
     from combustor.report.frame import RatedCase
 
     return RatedCase.of(rate_case(case, fuel_name=fuel, points=points, mechanism=mechanism))
+
+
+def comply(
+    case: Case, rules: Sequence[str] | None = None, points: Sequence[str] | None = None
+) -> ComplyCheck:
+    """Hold the emissions of a case against rule sets: a pre-check with margins.
+
+    Parameters
+    ----------
+    case : Case
+        Its ``[rules]`` give the facts the rules ask for.
+    rules : sequence of str, optional
+        Names of shipped sets, or paths of rule files; those of the case when left out.
+    points : sequence of str, optional
+        Names of the operating points wanted; all when left out.
+    """
+    from combustor.studies.comply import comply as comply_case
+
+    return comply_case(case, rules=rules, points=points)
 
 
 def flame(fuel: str | Fuel, **conditions: Any) -> Flame:

@@ -179,6 +179,71 @@ def _fuels(command: _Parser) -> None:
     _tables(command)
 
 
+def _comply(command: _Parser) -> None:
+    command.add_argument("case", metavar="CASE", help="case file; [rules] holds the facts")
+    command.add_argument(
+        "--rules",
+        metavar="NAME",
+        action="append",
+        help="rule set, or path of your own rule file; may be repeated (default: those of the "
+        "case, else all that ship)",
+    )
+    command.add_argument(
+        "--point", metavar="NAME", action="append", help="this point only; may be repeated"
+    )
+    _tables(command)
+
+
+def _convert(command: _Parser) -> None:
+    command.description = (
+        f"{command.description}\nA VALUE is in ppm unless it has a unit; one VALUE a run. "
+        "Each run is dried and\nbrought to 15 % O2 before runs are averaged."
+    )
+    command.add_argument("values", metavar="VALUE", nargs="+", help='43.2 or "50 mg/Nm3@15"')
+    command.add_argument("--species", metavar="S", required=True, help="NOx, CO, UHC, N2O, ...")
+    command.add_argument(
+        "--o2", metavar="O2", nargs="+", help='one for all or one a run, "14.2 %%"'
+    )
+    command.add_argument("--wet", action="store_true", help="measured wet, O2 as well")
+    command.add_argument(
+        "--o2-dry", action="store_true", help="with --wet: the O2 cell saw dry gas"
+    )
+    command.add_argument("--moisture", metavar="X", help='water in the wet gas, "8 %%"')
+    command.add_argument("--fuel", metavar="FUEL", required=True, help="catalogue name or blend")
+    command.add_argument(
+        "--to",
+        metavar="UNIT",
+        nargs="+",
+        required=True,
+        help="ppmvd@15, mg/Nm3@15, g/kg, lb/MMBtu, ...",
+    )
+    command.add_argument(
+        "--air-o2", metavar="O2", help='the rule\'s O2 in air (default "20.95 %%")'
+    )
+    command.add_argument("--heat-input", metavar="Q", help="LHV, for units per output or time")
+    command.add_argument("--output", metavar="W", help="for g/kWh and lb/MWh")
+    command.add_argument("--hours", metavar="H", help="operated a year, for t/yr")
+    command.add_argument("--ambient-temperature", metavar="T", help="for NOx at the ISO day")
+    command.add_argument("--humidity", metavar="H", help="of that air, kg/kg")
+    command.add_argument("--ambient-pressure", metavar="P", help="of that air (default 101.3 kPa)")
+    command.add_argument(
+        "--front-end",
+        metavar="KIND",
+        choices=("diffusion", "rich-lean", "lean-premixed"),
+        default="diffusion",
+        help="diffusion (default), rich-lean or lean-premixed",
+    )
+    _tables(command)
+
+
+def _rules(command: _Parser) -> None:
+    command.add_argument("name", metavar="NAME", nargs="?", help="show this rule set in full")
+    command.add_argument(
+        "--template", metavar="FILE", help="write a rule file to fill in (with NAME: that set)"
+    )
+    _tables(command)
+
+
 _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ...] = (
     (
         "new",
@@ -213,6 +278,15 @@ _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ..
         _sweep,
     ),
     (
+        "comply",
+        "emissions against the limits that bind, with margins: a pre-check",
+        (
+            "combustor comply sized.toml --rules us-40cfr60-kkkk",
+            "combustor comply sized.toml --rules my_permit.toml --json",
+        ),
+        _comply,
+    ),
+    (
         "flame",
         "quick look at a flame: equilibrium, and a stirred reactor of a residence time",
         (
@@ -222,10 +296,29 @@ _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ..
         _flame,
     ),
     (
+        "convert",
+        "an emission from the basis it was measured on to others, every step printed",
+        (
+            'combustor convert 43.2 41.8 --species NOx --o2 "14.2 %" "14.4 %" --fuel natural-gas '
+            "--to ppmvd@15 mg/Nm3@15 lb/MMBtu",
+        ),
+        _convert,
+    ),
+    (
         "fuels",
         "the fuel catalogue, or one fuel in full",
         ("combustor fuels", "combustor fuels natural-gas+30%hydrogen"),
         _fuels,
+    ),
+    (
+        "rules",
+        "the rule sets, or one in full, or a rule file to fill in",
+        (
+            "combustor rules",
+            "combustor rules eu-2015-2193",
+            "combustor rules --template my_permit.toml",
+        ),
+        _rules,
     ),
 )
 

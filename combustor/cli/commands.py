@@ -128,11 +128,35 @@ def sweep(arguments: argparse.Namespace) -> Answer:
     return sweep_case(arguments)
 
 
+def comply(arguments: argparse.Namespace) -> Answer:
+    """Hold a case against emission rules."""
+    from combustor.cli.permit import comply as comply_case
+
+    return comply_case(arguments)
+
+
+def convert(arguments: argparse.Namespace) -> Answer:
+    """Take one emission to other bases."""
+    from combustor.cli.permit import convert as convert_emission
+
+    return convert_emission(arguments)
+
+
+def rules(arguments: argparse.Namespace) -> Answer:
+    """Show the rule sets, one of them, or write a rule file to fill in."""
+    from combustor.cli.permit import rules as show_rules
+
+    return show_rules(arguments)
+
+
 _COMMANDS: dict[str, Callable[[argparse.Namespace], Answer]] = {
     "new": new,
     "size": size,
     "rate": rate,
     "sweep": sweep,
+    "comply": comply,
     "flame": flame,
+    "convert": convert,
     "fuels": fuels,
+    "rules": rules,
 }

@@ -250,7 +250,9 @@ def mean(runs: Sequence[Concentration]) -> Concentration:
     total = runs[0]
     for run in runs[1:]:
         total = total + run
-    return total / len(runs)
+    waters = [run.basis.water for run in runs if run.basis.water is not None]
+    water = sum(waters) / len(runs) if len(waters) == len(runs) else None
+    return Concentration(total.value / len(runs), replace(total.basis, water=water))
 
 
 def _lacking(what: str, allowed: str, basis: Basis) -> BasisError:

@@ -120,8 +120,9 @@ def _by_cubic_metre(text: str, body: str, oxygen: float | None) -> EmissionUnit 
     if match is None:
         return None
     if match[2] is None and match[3] is None:
-        raise _refused(text, "say at which temperature: mg/Nm3 (0 degC), mg/Sm3 (15 degC) or "
-                       "mg/m3(20C)")  # fmt: skip
+        raise _refused(
+            text, "say at which temperature: mg/Nm3 (0 degC), mg/Sm3 (15 degC) or mg/m3(20C)"
+        )
     kelvin = float(match[3]) + 273.15 if match[3] is not None else _FIXED[match[2]]
     cubic = "dscm" if match[2] == "ds" else f"{match[2] or ''}m3"
     stated = f"({match[3]}C)" if match[3] is not None else ""

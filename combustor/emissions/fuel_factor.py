@@ -130,8 +130,14 @@ def factors_of_analysis(
     """
     unknown = sorted(set(mass_percent) - {"C", "H", "S", "N", "O", "H2O"})
     if unknown:
-        raise InputError(Problem("not in an ultimate analysis", "C, H, S, N, O, H2O",
-                                 "mass_percent", ", ".join(unknown)))  # fmt: skip
+        raise InputError(
+            Problem(
+                "not in an ultimate analysis",
+                "C, H, S, N, O, H2O",
+                "mass_percent",
+                ", ".join(unknown),
+            )
+        )
     btu_per_pound = gross_heating_value * POUND / BTU
     get = mass_percent.get
     rest = 1.53 * get("C", 0.0) + 0.57 * get("S", 0.0) + 0.14 * get("N", 0.0)

@@ -53,11 +53,15 @@ def names() -> tuple[str, ...]:
     return tuple(sorted(name.removesuffix(".toml") for name in found))
 
 
+def shipped_text(name: str) -> str:
+    """Return the file of a shipped set."""
+    return _SHIPPED.joinpath(f"{name}.toml").read_text(encoding="utf-8")
+
+
 @cache
 def shipped(name: str) -> RuleSet:
     """Return a shipped set."""
-    text = _SHIPPED.joinpath(f"{name}.toml").read_text(encoding="utf-8")
-    return RuleSet(name, loads_rules(text, f"{name}.toml"))
+    return RuleSet(name, loads_rules(shipped_text(name), f"{name}.toml"))
 
 
 def find_rules(name: str, folder: str | os.PathLike[str] = ".") -> RuleSet:

@@ -72,6 +72,8 @@ class Stack:
         """
         parts = find(pollutant).parts
         absent = [part for part in parts if part not in self.wet]
+        if absent and pollutant in ("SO2", "SO3"):
+            raise FactMissing("fuel_sulfur", "sulfur of the fuel is not stated")
         if (absent and pollutant != "NOx") or "NO" in absent:
             raise FactMissing(
                 "a mechanism that holds it", f"{pollutant} is not part of the reaction mechanism"

@@ -89,8 +89,13 @@ def facts_of(case: Case, fuel: Fuel, ratings: Ratings) -> Facts:
         if point.output is not None:
             _derive(values, derived, "rated_output", point.output, f"output of point {point.name}")
             share = point.output / heat
-            _derive(values, derived, "efficiency", share, f"{100 * share:.1f} % of point "
-                    f"{point.name}, output over fuel heat")  # fmt: skip
+            _derive(
+                values,
+                derived,
+                "efficiency",
+                share,
+                f"{100 * share:.1f} % of point {point.name}, output over fuel heat",
+            )
         ratio = point.inlet_pressure / SEA_LEVEL
         if ratio >= 1.0:
             told = f"{ratio:.1f}, combustor inlet of point {point.name} over sea level"

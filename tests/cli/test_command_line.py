@@ -13,7 +13,7 @@ from combustor.cli import commands, main
 from combustor.cli.complaint import complaint
 
 ROOT = Path(combustor.__file__).parent.parent
-COMMANDS = ["new", "size", "rate", "sweep", "flame", "fuels"]
+COMMANDS = ["new", "size", "rate", "sweep", "comply", "flame", "convert", "fuels", "rules"]
 
 
 def run(*arguments, **options):
