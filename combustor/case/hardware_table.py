@@ -132,11 +132,17 @@ class OpeningTable(Table):
 
 
 class InjectorTable(Table):
-    """A fuel injector group: share of the fuel, and the openings that feed it air."""
+    """A fuel injector group: share of the fuel, and the openings that feed it air.
+
+    ``premix_length`` (m) and ``premix_area`` (m2, all passages of one can) where fuel and air
+    mix ahead of the dome.
+    """
 
     name: k.Name
     share: k.Share = 1.0
     openings: tuple[k.Name, ...] = ()
+    premix_length: k.Length | None = None
+    premix_area: k.Area | None = None
 
 
 class HardwareTable(Table):

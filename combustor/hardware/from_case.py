@@ -75,7 +75,10 @@ def _build(combustor: Combustor, table: t.HardwareTable) -> Hardware:
         diffuser=_diffuser(combustor, table.diffuser),
         openings=tuple(openings),
         zones=_zones(table),
-        injectors=tuple(Injector(i.name, i.share, i.openings) for i in table.injectors),
+        injectors=tuple(
+            Injector(i.name, i.share, i.openings, i.premix_length, i.premix_area)
+            for i in table.injectors
+        ),
         roughness=table.roughness,
     )
 

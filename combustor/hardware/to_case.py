@@ -19,6 +19,7 @@ from combustor.hardware.metal import (
     AxialProfile,
     Diffuser,
     Hardware,
+    Injector,
     LinerWall,
     Opening,
     Passage,
@@ -67,10 +68,20 @@ def table_of(hardware: Hardware, combustor: Combustor | None = None) -> Table:
     ]
     table["openings"] = [_opening(opening, hardware.walls) for opening in hardware.openings]
     if hardware.injectors:
-        table["injectors"] = [
-            {"name": i.name, "share": bare(i.share), "openings": list(i.openings)}
-            for i in hardware.injectors
-        ]
+        table["injectors"] = [_injector(injector) for injector in hardware.injectors]
+    return table
+
+
+def _injector(injector: Injector) -> Table:
+    table: Table = {
+        "name": injector.name,
+        "share": bare(injector.share),
+        "openings": list(injector.openings),
+    }
+    if injector.premix_length is not None:
+        table["premix_length"] = length(injector.premix_length)
+    if injector.premix_area is not None:
+        table["premix_area"] = area(injector.premix_area)
     return table
 
 

@@ -63,10 +63,10 @@ def rich_budget(demand: BudgetDemand) -> AirBudget:
     """
     front = demand.overall / demand.primary
     dome = demand.dome
-    if dome is None:
-        dome = (
-            min(PREFERRED_DOME, 0.4 * front) if demand.swirler is None else front - demand.swirler
-        )
+    if dome is None and demand.swirler is not None:
+        dome = front - demand.swirler
+    elif dome is None:
+        dome = min(PREFERRED_DOME, 0.4 * front)
     swirler = front - dome
     if swirler < LEAST_SWIRLER or dome < -_NEARLY:
         raise InfeasibleError(

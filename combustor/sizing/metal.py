@@ -7,6 +7,7 @@ from collections.abc import Mapping, Sequence
 from typing import Literal
 
 from combustor.hardware.beam_length import beam_length
+from combustor.hardware.derived import swirler_area
 from combustor.hardware.metal import (
     AxialProfile,
     Diffuser,
@@ -153,9 +154,7 @@ def _front(sketch: Sketch, areas: Mapping[str, float], drilled: bool) -> list[Op
 def _vaned(
     sketch: Sketch, name: str, role: Literal["swirler", "premixer"], made: Swirler
 ) -> Opening:
-    passage = vanes.passage_area(
-        made.hub_diameter, made.tip_diameter, made.vane_count, made.vane_thickness
-    )
+    passage = swirler_area(made)
     return Opening(
         name, role, "dome", 0.0, sketch.swirlers, passage, "swirler", "total", swirler=made
     )

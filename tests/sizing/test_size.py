@@ -308,14 +308,18 @@ def test_what_sizing_does_not_know_is_refused_at_once(case, fuel, gas):
         update={
             "combustor": case.combustor.model_copy(update={"layout": "annular"}),
             "targets": case.targets.model_copy(update={"front_end": "lean-premixed"}),
-            "model": case.model.model_copy(update={"primary_jet_share": 0.0}),
         }
     )
     with pytest.raises(InputError) as caught:
         size(strange, fuel, gas)
     said = str(caught.value)
-    for key in ("front_end", "primary_jet_share", "casing_outer_diameter", "casing_inner_diameter"):
+    for key in ("ratio.primary", "casing_outer_diameter", "casing_inner_diameter"):
         assert key in said
+    jetless = case.model_copy(
+        update={"model": case.model.model_copy(update={"primary_jet_share": 0.0})}
+    )
+    with pytest.raises(InputError, match="primary_jet_share"):
+        size(jetless, fuel, gas)
 
 
 def test_more_cans_share_the_work(design, fuel, gas, make_can):
