@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from combustor.base.method import Method
+from combustor.hardware.film_decay import decay, decay_exponent
 from combustor.heat.join import boundary_layer_share
 from combustor.heat.sides import FloatArray
 
@@ -28,7 +29,7 @@ SLOT_FILM = Method(
         "lip_ratio": (0.2, 1.0),
     },
     note="the laws meet at blowing ratio 1.263; the smaller is taken, the corner rounded by "
-    "less than 0.5 %; never above 1",
+    "less than 0.5 %; never above 1; beyond 150 slot heights it decays as film-decay-far says",
 )
 WEAK_FILM = Method(
     key="slot-effectiveness-mixing-juhasz-marek",
@@ -129,7 +130,7 @@ def slot_film(
     # The attached laws diverge at the lip; they pass 1 long before this distance.
     xs = np.maximum(x / slot_height, 1e-6)
     attached = _leading(blowing_ratio) * _shape(viscosity_ratio, xs, lip_thickness / slot_height)
-    attached_slope = -0.2 * attached / (xs * slot_height)
+    attached_slope = decay_exponent(xs) * attached / (xs * slot_height)
     share = boundary_layer_share(blowing_ratio)
     if share < 1.0:
         weak = effectiveness_mixing(blowing_ratio, xs, mixing_constant)
@@ -171,7 +172,7 @@ def regime_of(blowing_ratio: float) -> Regime:
 
 def _shape(viscosity_ratio: ArrayLike, slot_heights: ArrayLike, lip_ratio: float) -> FloatArray:
     mu = np.asarray(viscosity_ratio, dtype=float) ** 0.15
-    return mu * np.asarray(slot_heights, dtype=float) ** -0.2 * lip_ratio**-0.2
+    return mu * decay(slot_heights) * lip_ratio**-0.2
 
 
 def _leading(blowing_ratio: float) -> float:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from combustor.base.method import Method
+from combustor.hardware.film_decay import FAR_DECAY
 from combustor.heat.balance import BALANCE
 from combustor.heat.conduction import CONDUCTION
 from combustor.heat.convection import DUCT, FILM_CONVECTION
@@ -29,6 +30,7 @@ METHODS: tuple[Method, ...] = (
     ENCLOSURE,
     CASING_BALANCE,
     SLOT_FILM,
+    FAR_DECAY,
     WEAK_FILM,
     FILM_CONVECTION,
     JOIN,

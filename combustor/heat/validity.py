@@ -7,6 +7,7 @@ from collections.abc import Sequence
 import numpy as np
 
 from combustor.base.method import Method, Notice
+from combustor.hardware.film_decay import FAR_DECAY, FAR_START
 from combustor.heat.convection import FILM_CONVECTION
 from combustor.heat.effusion import EFFUSION, Effusion
 from combustor.heat.film import SLOT_FILM, WEAK_FILM
@@ -56,7 +57,8 @@ def film_notices(
     lips = [(film.lip_thickness / film.slot_height, film) for _, film in attached]
     found += _worst_film(SLOT_FILM, "lip_ratio", lips)
     reach = [((end - film.station) / film.slot_height, film) for _, film in attached]
-    found += _worst_film(SLOT_FILM, "slot_heights", [pair for pair in reach if pair[0] > 0.0])
+    far = [pair for pair in reach if pair[0] > FAR_START]
+    found += _worst_film(FAR_DECAY, "slot_heights", far)
     for patch in effusion:
         found += EFFUSION.notices(where=patch.name, row_effectiveness=patch.row_effectiveness)
     return tuple(found)

@@ -10,6 +10,7 @@ import numpy as np
 from combustor.base.convergence import Convergence
 from combustor.base.errors import InputError, Problem
 from combustor.base.method import Method, Notice
+from combustor.hardware.film_decay import FAR_DECAY
 from combustor.hardware.metal import LinerWall
 from combustor.heat.balance import BALANCE, WallBalance, WallConditions, solve
 from combustor.heat.coefficients import (
@@ -248,7 +249,8 @@ def _methods(
     else:
         used += [GREY_GAS, BROADENING] if radiation.broadening else [GREY_GAS]
     if films:
-        used += [SLOT_FILM, WEAK_FILM, FILM_CONVECTION, JOIN, SUPERPOSITION, ENTRAINMENT]
+        used += [SLOT_FILM, FAR_DECAY, WEAK_FILM, FILM_CONVECTION, JOIN]
+        used += [SUPERPOSITION, ENTRAINMENT]
     if effusion:
         used += [EFFUSION, HOLE_CONVECTION]
     if casing.loss_coefficient is not None:

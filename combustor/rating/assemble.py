@@ -12,14 +12,16 @@ from combustor.fuel.choose_mechanism import method_of
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.hardware.metal import Hardware
-from combustor.hardware.zone_air import zone_air
+from combustor.hardware.zone_air import FILM_MIXING, zone_air
 from combustor.heat.wall import WallMarch
 from combustor.kinetics.chain import EXCHANGE_WITH_THE_MEAN
+from combustor.kinetics.near_wall import NEAR_WALL
 from combustor.kinetics.primary import RECIRCULATION_TO_STREAMS
 from combustor.rating import settings as set_by
 from combustor.rating.balance import balances_of
 from combustor.rating.couple import Coupled
 from combustor.rating.fire import Fire
+from combustor.rating.near_wall import film_shares
 from combustor.rating.operating import Operating
 from combustor.rating.record import (
     ExitRecord,
@@ -102,7 +104,7 @@ def zones_of(
     fire = coupled.fire
     assert fire.exit is not None
     flows = {flow.name: flow.mass_flow for flow in coupled.split.openings}
-    shares = zone_air(hardware, flows, settings.primary_jet_share)
+    shares = zone_air(hardware, flows, settings.primary_jet_share, film_shares(coupled.walls))
     found = []
     for zone in hardware.zones:
         cells = [s for s in fire.chain.stations if s.name == zone.name]
@@ -112,7 +114,7 @@ def zones_of(
             ZoneRecord(
                 name=zone.name,
                 equivalence_ratio=operating.equivalence_ratio(fire.fuel_flow, shares[zone.name]),
-                temperature=cells[-1].temperature,
+                temperature=cells[-1].core.temperature,
                 residence_time=sum(cell.residence_time for cell in cells),
                 air_fraction=shares[zone.name],
             )
@@ -171,6 +173,8 @@ def methods_of(hardware: Hardware, fuel: Fuel, coupled: Coupled) -> tuple[Method
     """Return every method this rating stands on, once each."""
     used = [
         *methods_used(hardware),
+        FILM_MIXING,
+        NEAR_WALL,
         RECIRCULATION_TO_STREAMS,
         EXCHANGE_WITH_THE_MEAN,
         set_by.UNMIXEDNESS,

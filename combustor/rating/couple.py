@@ -11,11 +11,12 @@ from combustor.airflow.split import split
 from combustor.base.convergence import Convergence
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
-from combustor.hardware.metal import Hardware
+from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.heat.wall import WallMarch
 from combustor.kinetics.chain import Chain
 from combustor.rating.fire import Fire, layout_of, light, liner_gas_of
 from combustor.rating.fuel_demand import FuelDemand
+from combustor.rating.near_wall import film_shares
 from combustor.rating.operating import Operating
 from combustor.rating.settings import Settings
 from combustor.rating.walls import annulus_heat_of, heat_losses_of, walls_of
@@ -73,12 +74,14 @@ def couple(
     warm: Chain | None = None
     losses: list[float] | None = None
     walls: tuple[WallMarch, ...] = ()
+    films: dict[str, AxialProfile] | None = None
     if near is not None and near.fire.exit is not None:
         hot = liner_gas_of(gas, operating, near.split, near.fire)
         solved = split(
             hardware, operating.inlet, hot, annulus_heat_of(near.walls), guess=near.split
         )
         warm, losses = near.fire.chain, heat_losses_of(near.fire, near.walls)
+        films = film_shares(near.walls)
     else:
         cold = split(hardware, operating.inlet)
         hot = _first_fire(operating, hardware, cold, settings)
@@ -90,7 +93,9 @@ def couple(
         if not solved.convergence.converged:
             message = f"air split: {solved.convergence.message}"
             break
-        fire = light(gas, operating, hardware, layout, solved, fuel_flow, settings, warm, losses)
+        fire = light(
+            gas, operating, hardware, layout, solved, fuel_flow, settings, warm, losses, films
+        )
         if fire.chain.status == "blown_out":
             return Coupled(solved, fire, (), Convergence(True, 0.0, passes))
         if fire.exit is None:
@@ -100,7 +105,7 @@ def couple(
         if not all(wall.convergence.converged for wall in walls):
             message = "wall: a heat balance did not close"
             break
-        new_losses = heat_losses_of(fire, walls)
+        new_losses, films = heat_losses_of(fire, walls), film_shares(walls)
         following = split(
             hardware,
             operating.inlet,
@@ -117,6 +122,7 @@ def couple(
             and change < settings.tolerance
             and abs(fire.exit.temperature - previous.exit.temperature)
             < settings.temperature_tolerance
+            and _films_moved(previous, fire) < settings.tolerance * operating.inlet.mass_flow
             and _heat_moved(losses, new_losses) < 1e-6 * fuel_flow * operating.lower_heating_value
             and _temperature_met(operating, fire, settings)
         ):
@@ -150,6 +156,12 @@ def _change(before: AirSplit, after: AirSplit) -> float:
         abs(a.mass_flow - b.mass_flow) / total
         for a, b in zip(before.openings, after.openings, strict=True)
     )
+
+
+def _films_moved(before: Fire, after: Fire) -> float:
+    """Return the largest change of film air still unmixed anywhere along the liner, kg/s."""
+    moved = np.subtract(before.beside.film_left, after.beside.film_left)
+    return float(np.max(np.abs(moved), initial=0.0))
 
 
 def _heat_moved(before: list[float], after: list[float]) -> float:

@@ -1,4 +1,4 @@
-"""Where along the chain each opening's air joins the core."""
+"""Where each opening's air enters: primary zone, core, beside the wall, exit."""
 
 from __future__ import annotations
 
@@ -28,14 +28,18 @@ class Entry:
     primary : float
         Share that enters the primary zone.
     stretches : tuple of float
-        Share that enters each stretch behind the primary zone.
+        Share that enters the core in each stretch behind the primary zone.
     exit : float
-        Share that joins at the exit, unburnt. The shares sum to one.
+        Share that joins at the exit, unburnt.
+    beside : int or None
+        Stretch in which the whole of it enters beside the wall. The shares sum to one, or to
+        nothing where it does.
     """
 
     primary: float
     stretches: tuple[float, ...]
     exit: float
+    beside: int | None = None
 
 
 def primary_end(hardware: Hardware) -> float:
@@ -69,30 +73,24 @@ def stretches_of(hardware: Hardware, settings: Settings) -> tuple[Stretch, ...]:
 def entry_of(
     opening: Opening, hardware: Hardware, stretches: tuple[Stretch, ...], settings: Settings
 ) -> Entry:
-    """Share one opening's air out over primary zone, stretches and exit."""
-    if opening.role == "leak":
-        return Entry(0.0, (0.0,) * len(stretches), 1.0)
-    if opening.role in FILM_ROLES:
-        return _film_entry(opening, hardware, stretches)
+    """Share one opening's air out over primary zone, stretches, wall and exit.
+
+    Films and what leaks in through the wall enter beside it; those of the primary zone cling to
+    it outside the recirculation and count from the zone's end.
+    """
+    if opening.role in FILM_ROLES or opening.role == "leak":
+        return _wall_entry(opening, stretches)
     if opening.role in FRONT_ROLES and opening.station <= primary_end(hardware):
         return Entry(1.0, (0.0,) * len(stretches), 0.0)
     return _row_entry(opening, hardware, stretches, settings)
 
 
-def _film_entry(opening: Opening, hardware: Hardware, stretches: tuple[Stretch, ...]) -> Entry:
-    shares: list[float] = []
-    before = 0.0
-    for stretch in stretches:
-        if stretch.zone == "transition":
-            # what is left of the film has no lip to cling to beyond the liner
-            count = sum(s.zone == "transition" for s in stretches)
-            rest = 1.0 - sum(shares[: len(stretches) - count])
-            shares.append(rest / count)
-            continue
-        mixed = mixed_share(hardware, opening, stretch.end)
-        shares.append(mixed - before)
-        before = mixed
-    return Entry(0.0, tuple(shares), max(0.0, 1.0 - sum(shares)))
+def _wall_entry(opening: Opening, stretches: tuple[Stretch, ...]) -> Entry:
+    nothing = (0.0,) * len(stretches)
+    for place, stretch in enumerate(stretches):
+        if opening.station < stretch.end and stretch.zone != "transition":
+            return Entry(0.0, nothing, 0.0, place)
+    return Entry(0.0, nothing, 1.0)
 
 
 def _row_entry(

@@ -2,19 +2,22 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from dataclasses import dataclass
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from combustor.airflow.result import AirSplit, LinerGas, OpeningFlow
 from combustor.fuel.gas import Gas, GasState
-from combustor.hardware.metal import Hardware
-from combustor.kinetics.chain import Cell, Chain, burn
+from combustor.hardware.metal import AxialProfile, Hardware
+from combustor.kinetics.chain import burn
+from combustor.kinetics.near_wall import NO_EXCHANGE
 from combustor.kinetics.primary import PrimaryZone
+from combustor.kinetics.record import Cell, Chain
 from combustor.kinetics.streams import Stream
 from combustor.rating.entry import Entry, Stretch, entry_of, primary_end, stretches_of
+from combustor.rating.near_wall import Beside, beside_of, core_only
 from combustor.rating.operating import Operating
 from combustor.rating.settings import (
     JET_VELOCITY_SHARE,
@@ -51,6 +54,8 @@ class Fire:
         kg/s.
     mixing : float
         Exchange rate used, 1/s.
+    beside : Beside
+        What passed between the core and the stream beside the wall.
     """
 
     chain: Chain
@@ -58,6 +63,7 @@ class Fire:
     fuel_flow: float
     exit_flow: float
     mixing: float
+    beside: Beside
 
 
 def layout_of(hardware: Hardware, settings: Settings) -> Layout:
@@ -78,11 +84,18 @@ def light(
     settings: Settings,
     warm: Chain | None,
     heat_losses: Sequence[float] | None,
+    films: Mapping[str, AxialProfile] | None = None,
+    quenches: bool = True,
 ) -> Fire:
     """Burn the fuel in the air as it splits.
 
     Parameters
     ----------
+    films : mapping of str to AxialProfile or None
+        Share of each film's air still at the wall, from the wall march before.
+    quenches : bool
+        Core gas reacts beside the wall with the film air. Otherwise the film air mixes into
+        the core at the same rate and takes in nothing: what quenching adds is the difference.
     heat_losses : sequence of float or None
         Through the wall, of the primary zone and of each stretch, W.
 
@@ -104,16 +117,26 @@ def light(
         streams=settings.streams,
         end=layout.primary_end,
     )
-    cells = []
-    for place, stretch in enumerate(layout.stretches):
-        air = _joined(operating, inflows, [entry.stretches[place] for entry in layout.entries])
-        inflow = (air,) if air.mass_flow > 0.0 else ()
-        cells.append(Cell(stretch.zone, stretch.volume, stretch.start, stretch.end, inflow, mixing))
+    side = [
+        _joined(operating, inflows, [entry.stretches[place] for entry in layout.entries])
+        for place in range(len(layout.stretches))
+    ]
+    core_flow = primary.fuel.mass_flow + primary.air.mass_flow
+    core_flows = core_flow + np.cumsum([0.0, *(air.mass_flow for air in side[:-1])])
+    beside = beside_of(
+        hardware, layout.stretches, layout.entries, inflows, core_flows.tolist(), films
+    )
+    cells = [
+        Cell(s.zone, s.volume, s.start, s.end, _present(air), mixing, beside=exchange)
+        for s, air, exchange in zip(layout.stretches, side, beside.exchanges, strict=True)
+    ]
+    if not quenches:
+        cells = _with_film_air_mixed(operating, cells, beside)
     chain = burn(gas, pressure, primary, cells, warm, heat_losses)
     last = _joined(operating, inflows, [entry.exit for entry in layout.entries])
     mixed = None if chain.exit is None else _mixed(gas, chain, last)
     exit_flow = operating.inlet.mass_flow + fuel_flow + operating.water_flow
-    return Fire(chain, mixed, fuel_flow, exit_flow, mixing)
+    return Fire(chain, mixed, fuel_flow, exit_flow, mixing, beside)
 
 
 def chain_pressure(split: AirSplit) -> float:
@@ -144,7 +167,7 @@ def air_enthalpy(operating: Operating, temperature: float) -> float:
 def liner_gas_of(gas: Gas, operating: Operating, split: AirSplit, fire: Fire) -> LinerGas:
     """Return what the fire does to the gas the air split sees: all that is inside the liner.
 
-    Films and leakage that are inside but not yet mixed in count at the inlet temperature.
+    What is inside before the chain takes it up counts at the inlet temperature.
     """
     chain = fire.chain
     liner_end = float(split.liner.station[-1])
@@ -194,6 +217,24 @@ def _joined(operating: Operating, inflows: Sequence[Stream], shares: Sequence[fl
     heat = sum(s.mass_flow * s.enthalpy * part for s, part in zip(inflows, shares, strict=True))
     enthalpy = heat / mass if mass > 0.0 else operating.air_enthalpy
     return Stream(mass, enthalpy, operating.air)
+
+
+def _present(air: Stream) -> tuple[Stream, ...]:
+    return (air,) if air.mass_flow > 0.0 else ()
+
+
+def _with_film_air_mixed(operating: Operating, cells: Sequence[Cell], beside: Beside) -> list[Cell]:
+    """Return the cells with film air that mixes into the core as it leaves the wall, unreacted."""
+    films = [stream for exchange in beside.exchanges for stream in exchange.air]
+    mean = _joined(operating, films, [1.0] * len(films))
+    return [
+        replace(
+            cell,
+            air=cell.air + _present(replace(mean, mass_flow=mixed)),
+            beside=NO_EXCHANGE,
+        )
+        for cell, mixed in zip(cells, core_only(beside), strict=True)
+    ]
 
 
 def _mixed(gas: Gas, chain: Chain, last: Stream) -> GasState:

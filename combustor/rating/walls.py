@@ -55,18 +55,19 @@ def gas_side_of(
     inside = [s for s in fire.chain.stations if s.end <= end * (1.0 + 1e-9)]
     x = np.array([0.0, *(s.end for s in inside)])
     core = [inside[0], *inside]
-    flow = np.array([s.mass_flow for s in core])
-    moles = [gas.mole_fractions(s.mass_fractions) for s in core]
+    # what is beside the wall flows at the core's velocity but not at its density
+    flow = np.array([s.mass_flow * s.core.density / s.density for s in core])
+    left = np.array([0.0, 0.0, *fire.beside.film_left])[: len(core)]
+    air = np.array([s.mass_flow for s in core]) - left - fire.fuel_flow - operating.water_flow
+    moles = [gas.mole_fractions(s.core.mass_fractions) for s in core]
     carbon_dioxide = gas.index("CO2") if gas.has("CO2") else None
     return GasSide(
         station=x,
-        temperature=np.array([s.temperature for s in core]),
+        temperature=np.array([s.core.temperature for s in core]),
         mass_flow=flow,
         area=hardware.liner.area.at(x) * hardware.cans,
         hydraulic_diameter=hardware.liner.hydraulic_diameter.at(x),
-        fuel_air_ratio=fire.fuel_flow
-        * (1.0 + operating.humidity)
-        / (flow - fire.fuel_flow - operating.water_flow),
+        fuel_air_ratio=fire.fuel_flow * (1.0 + operating.humidity) / air,
         pressure=chain_pressure(split),
         x_h2o=np.array([m[gas.index("H2O")] for m in moles]),
         x_co2=np.array([0.0 if carbon_dioxide is None else m[carbon_dioxide] for m in moles]),

@@ -74,8 +74,10 @@ FLOWS = {
 
 
 def film_share(distance: float) -> float:
-    """Ballal and Lefebvre's wall jet, written out apart: what effectiveness has been lost."""
-    return 1.0 - 1.28 * 0.53**0.15 * 0.4**-0.2 * (distance / HEIGHT) ** -0.2
+    """Ballal and Lefebvre's wall jet to 150 slot heights, x^-0.8 beyond, written out apart."""
+    heights = distance / HEIGHT
+    decay = heights**-0.2 if heights < 150.0 else 150.0**-0.2 * (150.0 / heights) ** 0.8
+    return 1.0 - 1.28 * 0.53**0.15 * 0.4**-0.2 * decay
 
 
 def test_zones_by_hand():

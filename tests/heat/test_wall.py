@@ -329,11 +329,16 @@ def test_a_march_inside_all_ranges_notes_nothing(bench):
     assert bench.march((bench.film(1.0),)).notices == ()
 
 
-def test_an_old_film_beyond_150_slot_heights_is_noted(bench):
+def test_a_film_beyond_150_slot_heights_decays_faster_and_beyond_1000_is_noted(bench):
     bench.change("gas", station=np.array([0.0, 0.3]))
+    near = bench.march((bench.film(1.0),))
+    assert near.notices == ()
+    at_150, at_200 = np.interp([0.225, 0.3], near.station, near.film_effectiveness)
+    assert at_200 / at_150 == pytest.approx((150.0 / 200.0) ** 0.8, rel=2e-3)
+    bench.change("gas", station=np.array([0.0, 1.8]))
     notices = bench.march((bench.film(1.0),)).notices
     assert [notice.quantity for notice in notices] == ["slot_heights"]
-    assert notices[0].value == pytest.approx(200.0)
+    assert notices[0].value == pytest.approx(1200.0)
 
 
 def test_the_methods_used_are_told(bench):

@@ -247,7 +247,9 @@ def test_films_keep_the_wall_cool(bench):
 def test_profile_runs_downhill_from_the_primary_zone(bench):
     profile = bench.rated("full").profile
     assert np.all(np.diff(profile.station) > 0.0)
-    assert np.all(np.diff(profile.temperature) < 0.0)
+    # no air joins in the transition: there the last of the fuel may still warm the gas
+    assert np.all(np.diff(profile.temperature) < 0.5)
+    assert np.all(np.diff(profile.temperature)[:-1] < 0.0)
 
 
 def test_another_fuel_on_the_same_metal(bench):
