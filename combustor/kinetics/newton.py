@@ -8,6 +8,7 @@ when its stream stops converging well and is kept otherwise.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
@@ -52,21 +53,25 @@ class Outcome:
 class _Factor:
     """One stream's factored Jacobian."""
 
-    def __init__(self, matrix: Array, explicit: bool) -> None:
-        upper, self._pivots, info = dgetrf(matrix.T, overwrite_a=1)
+    def __init__(self, matrix: Array) -> None:
+        # Row-major memory is the transpose in LAPACK's eyes: no copy, and solved as such below.
+        self._upper, self._pivots, info = dgetrf(matrix.T, overwrite_a=1)
         self.regular = info == 0
-        swaps = np.count_nonzero(self._pivots != np.arange(len(self._pivots)))
-        negatives = np.count_nonzero(upper.diagonal() < 0.0)
-        self.stable = (swaps + negatives - len(matrix)) % 2 == 0
-        self._upper = upper
-        self.inverse: Array | None = None
-        if explicit and self.regular:
-            self.inverse = dgetri(upper, self._pivots, overwrite_lu=1)[0].T
+        self.stable = (_sign_changes(self._upper, self._pivots) - len(matrix)) % 2 == 0
 
     def solve(self, right: Array) -> Array:
-        if self.inverse is not None:
-            return self.inverse @ right
         return dgetrs(self._upper, self._pivots, right, trans=1)[0]
+
+    @cached_property
+    def inverse(self) -> Array:
+        """For the border alone: it keeps elements less well than a solve does."""
+        return dgetri(self._upper, self._pivots)[0].T
+
+
+def _sign_changes(upper: Array, pivots: NDArray[np.int32]) -> int:
+    """Return a number whose parity is the sign of the factored matrix's determinant."""
+    swaps = np.count_nonzero(pivots != np.arange(len(pivots)))
+    return int(swaps + np.count_nonzero(upper.diagonal() < 0.0))
 
 
 class _Run:
@@ -94,7 +99,6 @@ class _Run:
         residuals = (inlets - self.moles) * self.rate
         if self.inverse_step > 0.0:
             residuals += self.inverse_step * (self.anchor - self.moles)
-        explicit = zone.recirculation > 0.0
         volumes = np.empty(zone.streams)
         slopes = np.empty_like(self.moles)
         for place in range(zone.streams):
@@ -109,7 +113,7 @@ class _Run:
             if factor is None:
                 production, matrix = self.rates.derivatives(temperature, pressure, moles)
                 matrix.flat[:: len(moles) + 1] -= self.rate + self.inverse_step
-                factor = self.factors[place] = _Factor(matrix, explicit)
+                factor = self.factors[place] = _Factor(matrix)
                 self.signs[place] = factor.stable
                 if not factor.regular:
                     return np.inf
@@ -145,27 +149,24 @@ class _Run:
             self.border_sign = bool(rate_pivot > 0.0)
             rate_change = float(rate_right / rate_pivot)
             return -plain - with_rate * rate_change, rate_change
-        inverses = [factor.inverse for factor in self.factors if factor is not None]
+        factors = [factor for factor in self.factors if factor is not None]
         border = np.zeros((size + 1, size + 1))
-        for place, inverse in enumerate(inverses):
-            assert inverse is not None
-            border[:size, :size] += (back * shares[place]) * inverse
-            border[size, :size] += back * (weighted[place] @ inverse)
+        for place, factor in enumerate(factors):
+            border[:size, :size] += (back * shares[place]) * factor.inverse
+            border[size, :size] += back * (weighted[place] @ factor.inverse)
         border.flat[:: size + 2] += 1.0
         border[:size, size] = shares @ with_rate
         border[size, size] = rate_pivot
         upper, pivots, info = dgetrf(border)
         if info != 0:
             return np.full_like(residuals, np.inf), 0.0
-        swaps = np.count_nonzero(pivots != np.arange(len(pivots)))
-        self.border_sign = (swaps + np.count_nonzero(upper.diagonal() < 0.0)) % 2 == 0
+        self.border_sign = _sign_changes(upper, pivots) % 2 == 0
         right = np.append(-(shares @ plain), rate_right)
         answer = dgetrs(upper, pivots, right)[0]
         mean_change, rate_change = answer[:size], float(answer[size])
         change = -plain - with_rate * rate_change
-        for place, inverse in enumerate(inverses):
-            assert inverse is not None
-            change[place] -= back * (inverse @ mean_change)
+        for place, factor in enumerate(factors):
+            change[place] -= factor.solve(back * mean_change)
         return change, rate_change
 
     def _take(self, change: Array, rate_change: float) -> float:
