@@ -6,6 +6,7 @@ it needs, so nothing a caller did before can change an answer.
 
 from __future__ import annotations
 
+import warnings
 from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import cached_property
@@ -319,7 +320,10 @@ class Gas:
         for solver in ("element_potential", "gibbs", "vcs"):
             solution.TPY = unburnt, pressure, mass_fractions
             try:
-                solution.equilibrate("HP", solver=solver, rtol=1e-10)
+                with warnings.catch_warnings():
+                    # Of a start colder than the polynomials' 300 K, as cold inlet air is.
+                    warnings.simplefilter("ignore", UserWarning)
+                    solution.equilibrate("HP", solver=solver, rtol=1e-10)
             except ct.CanteraError:
                 continue
             return GasState(float(solution.T), pressure, solution.Y, enthalpy)
