@@ -40,6 +40,8 @@ PREMIXED_PRACTICE = Method(
 _TAYLOR = 69090.0  # K
 _MOST_WATER = 1.2
 _LEAN = 0.75
+_MOST_HEAT = 400.0  # K: beyond it the law is not the same flame
+_LEAST_TIME = 0.3
 
 
 @dataclass(frozen=True)
@@ -175,16 +177,18 @@ def _injection(factor: float, flame: Flame) -> Remedy:
 
 def _unburnt(factor: float, flame: Flame) -> tuple[Remedy, ...]:
     hotter = log(1.0 / factor) / 0.00345
+    heat = f"about {hotter:.0f} K hotter (now {flame.temperature:.0f} K)"
+    longer = 1e3 * flame.residence_time / factor
+    time = f"from {1e3 * flame.residence_time:.2f} to about {longer:.2f} ms"
     return (
         Remedy(
             "flame temperature",
-            f"about {hotter:.0f} K hotter (now {flame.temperature:.0f} K)",
+            heat if hotter <= _MOST_HEAT else f"not alone: more than {_MOST_HEAT:.0f} K hotter",
             "primary zone nearer to stoichiometric at this load; NOx rises",
         ),
         Remedy(
             "residence time",
-            f"from {1e3 * flame.residence_time:.2f} to about "
-            f"{1e3 * flame.residence_time / factor:.2f} ms",
+            time if factor >= _LEAST_TIME else f"not alone: {1.0 / factor:.0f} times longer",
             "more volume, or less air before the secondary row",
         ),
         Remedy("film air", "less of it in the primary zone", "film air quenches CO at the wall"),

@@ -10,7 +10,7 @@ VERDICTS = (
     Field("row", "row"),
     Field("pollutant", "pollutant"),
     Field("predicted", "predic-\nted", "", "", 1.0, figures=3),
-    Field("predicted_rounded", "rounded", "", "", 1.0, figures=3),
+    Field("predicted_rounded", "rounded", "", "", 1.0),
     Field("band_low", "band\nlow", "", "5 %", 1.0, figures=3),
     Field("band_high", "band\nhigh", "", "95 %", 1.0, figures=3),
     Field("limit", "limit", "", "", 1.0, figures=3),
