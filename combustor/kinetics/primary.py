@@ -46,6 +46,8 @@ class PrimaryZone:
         Number of parallel streams when not fully mixed.
     end : float
         Axial station of its end [m]
+    distribution : Distribution or None
+        Streams as several injectors make them, in place of `unmixedness` and `streams`.
     """
 
     fuel: Stream
@@ -55,6 +57,7 @@ class PrimaryZone:
     recirculation: float
     streams: int = DEFAULT_STREAMS
     end: float = 0.0
+    distribution: Distribution | None = None
 
 
 def distribution_of(primary: PrimaryZone) -> Distribution:
@@ -70,6 +73,8 @@ def distribution_of(primary: PrimaryZone) -> Distribution:
             raise InputError(
                 Problem("nothing flows into the primary zone", "above 0", name, stream.mass_flow)
             )
+    if primary.distribution is not None:
+        return primary.distribution
     mean = primary.fuel.mass_flow / (primary.fuel.mass_flow + primary.air.mass_flow)
     return beta_streams(mean, primary.unmixedness, primary.streams)
 

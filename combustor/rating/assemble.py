@@ -20,7 +20,8 @@ from combustor.kinetics.primary import RECIRCULATION_TO_STREAMS
 from combustor.rating import settings as set_by
 from combustor.rating.balance import balances_of
 from combustor.rating.couple import Coupled
-from combustor.rating.fire import Fire
+from combustor.rating.fire import Fire, layout_of
+from combustor.rating.injectors import INJECTOR_AIR, PREMIXED_UNMIXEDNESS, injectors_of, is_premixed
 from combustor.rating.near_wall import film_shares
 from combustor.rating.operating import Operating
 from combustor.rating.record import (
@@ -88,6 +89,14 @@ def rated(
         convergence=coupled.convergence,
         hardware=hardware,
         cautions=fuel.cautions,
+        injectors=injectors_of(
+            operating,
+            hardware,
+            solved,
+            layout_of(hardware, settings).entries,
+            fire.fuel_flow,
+            settings,
+        ),
     )
 
 
@@ -169,6 +178,15 @@ def wall_points(wall: WallMarch) -> list[WallPoint]:
     ]
 
 
+def _injector_methods(hardware: Hardware) -> tuple[Method, ...]:
+    used = []
+    if any(is_premixed(injector, hardware) for injector in hardware.injectors):
+        used.append(PREMIXED_UNMIXEDNESS)
+    if len(hardware.injectors) > 1:
+        used.append(INJECTOR_AIR)
+    return tuple(used)
+
+
 def methods_of(hardware: Hardware, fuel: Fuel, coupled: Coupled) -> tuple[Method, ...]:
     """Return every method this rating stands on, once each."""
     used = [
@@ -178,6 +196,7 @@ def methods_of(hardware: Hardware, fuel: Fuel, coupled: Coupled) -> tuple[Method
         RECIRCULATION_TO_STREAMS,
         EXCHANGE_WITH_THE_MEAN,
         set_by.UNMIXEDNESS,
+        *_injector_methods(hardware),
         set_by.RECIRCULATION,
         set_by.MIXING,
         set_by.JET_MIXING_LENGTH,

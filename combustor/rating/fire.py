@@ -17,6 +17,7 @@ from combustor.kinetics.primary import PrimaryZone
 from combustor.kinetics.record import Cell, Chain
 from combustor.kinetics.streams import Stream
 from combustor.rating.entry import Entry, Stretch, entry_of, primary_end, stretches_of
+from combustor.rating.injectors import injectors_of, streams_of, width_of
 from combustor.rating.near_wall import Beside, beside_of, core_only
 from combustor.rating.operating import Operating
 from combustor.rating.settings import (
@@ -108,14 +109,17 @@ def light(
     if mixing is None:
         mixing = mixing_rate(split, hardware.liner_height)
     inflows = [_air(operating, flow) for flow in split.openings]
+    injectors = injectors_of(operating, hardware, split, layout.entries, fuel_flow, settings)
+    mixture = streams_of(injectors, fuel_flow, operating.water_flow, settings.streams)
     primary = PrimaryZone(
         fuel=_injected(operating, fuel_flow),
         air=_joined(operating, inflows, [entry.primary for entry in layout.entries]),
         volume=layout.primary_volume,
-        unmixedness=settings.unmixedness,
+        unmixedness=mixture.unmixedness if mixture else width_of(injectors, settings),
         recirculation=settings.recirculation,
         streams=settings.streams,
         end=layout.primary_end,
+        distribution=mixture,
     )
     side = [
         _joined(operating, inflows, [entry.stretches[place] for entry in layout.entries])

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
@@ -54,6 +55,8 @@ class Operating:
         Per dry air.
     products : HotGas
         Equilibrium products by equivalence ratio, the first guess of the fire.
+    fuel_split : mapping of str to float or None
+        Share of the fuel by injector; None leaves it to the metal [-]
     """
 
     name: str
@@ -72,6 +75,7 @@ class Operating:
     lower_heating_value: float
     stoichiometric_fuel_air_ratio: float
     products: HotGas
+    fuel_split: Mapping[str, float] | None = None
 
     @property
     def dry_air_flow(self) -> float:
@@ -133,4 +137,5 @@ def operating_of(case: Case, point: Point, fuel: Fuel, gas: Gas) -> Operating:
         lower_heating_value=fuel.lower_heating_value,
         stoichiometric_fuel_air_ratio=fuel.stoichiometric_fuel_air_ratio,
         products=products,
+        fuel_split=point.fuel_split,
     )

@@ -15,6 +15,7 @@ from combustor.base.finding import Finding
 from combustor.base.method import Method
 from combustor.emissions.exhaust import Emissions
 from combustor.hardware.metal import Hardware
+from combustor.rating.injectors import InjectorAir
 
 Status = Literal["burning", "blown_out", "not_converged"]
 
@@ -87,7 +88,8 @@ class PointRating:
     Fractions are fractions (pressure_loss 0.045), SI throughout. ``balances`` holds "air",
     "elements" and "enthalpy" imbalances as defined for the JSON output. ``methods`` are the
     published methods this result stands on, for the table of sources. ``hardware`` is the
-    metal the split belongs to; ``cautions`` are what the fuel asks the reader to mind.
+    metal the split belongs to; ``injectors`` what each of its injectors burns; ``cautions`` are
+    what the fuel asks the reader to mind.
     """
 
     name: str
@@ -113,6 +115,7 @@ class PointRating:
     convergence: Convergence | None = None
     hardware: Hardware | None = None
     cautions: tuple[str, ...] = ()
+    injectors: tuple[InjectorAir, ...] = ()
 
     @property
     def converged(self) -> bool:

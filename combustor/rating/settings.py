@@ -70,6 +70,8 @@ class Settings:
         Largest change of the exit temperature between two passes, K.
     passes : int
         Most passes before the point is called not converged.
+    is_unmixedness_stated : bool
+        The case's own width holds for every injector; else a premixed one has its own default.
     """
 
     unmixedness: float = 0.4
@@ -84,6 +86,7 @@ class Settings:
     tolerance: float = 1e-5
     temperature_tolerance: float = 0.05
     passes: int = 25
+    is_unmixedness_stated: bool = False
 
 
 def settings_of(model: Model) -> Settings:
@@ -103,4 +106,5 @@ def settings_of(model: Model) -> Settings:
         dilution_cells=default.dilution_cells if cells is None else cells,
         primary_jet_share=model.primary_jet_share,
         wall_stations=int(stated(model.wall_stations, default.wall_stations)),
+        is_unmixedness_stated=model.unmixedness is not None,
     )

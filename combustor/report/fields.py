@@ -69,6 +69,21 @@ ZONES = (
     Field("residence_time_ms", "residence\ntime", "residence_time", "ms", 1e3, decimals=2),
     Field("air_percent", "air\nso far", "air_fraction", "%", 100.0, decimals=2),
 )
+INJECTORS = (
+    Field("name", "injector"),
+    Field("fuel_percent", "fuel", "fuel_share", "%", 100.0, decimals=1),
+    Field("air_kg_s", "own\nair", "own_air", "kg/s", 1.0, decimals=3),
+    Field("equivalence_ratio", "equiv. ratio\nown air", "equivalence_ratio", "-", 1.0, decimals=3),
+    Field(
+        "primary_equivalence_ratio",
+        "equiv. ratio\nprimary zone",
+        "primary_equivalence_ratio",
+        "-",
+        1.0,
+        decimals=3,
+    ),
+    Field("unmixedness_percent", "unmixed-\nness", "unmixedness", "%", 100.0, decimals=0),
+)
 PROFILE = (
     Field("x_mm", "x", "station", "mm", 1e3, decimals=1),
     Field("temperature_K", "temper-\nature", "temperature", "K", 1.0, decimals=0),

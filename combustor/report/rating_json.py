@@ -33,6 +33,7 @@ def point_document(point: PointRating) -> dict[str, Any]:
         "pressure_loss_parts_percent": row(fields.LOSS_PARTS, point),
         "split": [row(fields.SPLIT, line) for line in split_rows(point)],
         "zones": [row(fields.ZONES, zone) for zone in point.zones],
+        "injectors": [row(fields.INJECTORS, injector) for injector in point.injectors],
         "profile": [row(fields.PROFILE, line) for line in profile_rows(point.profile)],
         "exit": row(fields.EXIT, point),
         "walls": [row(fields.WALLS, wall) for wall in point.walls],

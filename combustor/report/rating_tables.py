@@ -104,6 +104,8 @@ def point_blocks(point: PointRating) -> list[Block]:
         blocks.append(Table("split", "Air split", fields.SPLIT, split))
     if point.zones:
         blocks.append(Table("zones", "Zones", fields.ZONES, point.zones))
+    if len(point.injectors) > 1:
+        blocks.append(Table("injectors", "Injectors", fields.INJECTORS, point.injectors))
     if point.walls:
         blocks.append(walls_table(point))
     if point.emissions is not None:
