@@ -21,6 +21,8 @@ Array = NDArray[np.float64]
 RELATIVE_TOLERANCE = 1e-7  # last Newton step, per species
 ABSOLUTE_TOLERANCE = 1e-15  # kmol/kg, about 3e-14 in mass fraction
 DEEPEST_DIP = 100.0 * ABSOLUTE_TOLERANCE  # below zero, allowed to an iterate
+ELEMENT_TOLERANCE = 1e-12  # of what flows in
+LEAST_ELEMENTS = 1e-16  # kmol/kg, the noise of arithmetic
 KEPT_CONTRACTION = 0.1  # a factor is kept while steps shrink at least by this
 HOPELESS = 1e40  # step size beyond which an iterate is given up at once
 # A run whose steps are still this large after this many iterations is not going to settle.
@@ -89,6 +91,7 @@ class _Run:
         self.sizes = np.full(zone.streams, np.inf)
         self.signs = np.ones(zone.streams, dtype=bool)
         self.border_sign = True
+        self.restored = False
 
     def advance(self) -> float:
         """Take one step; return its size, infinite when the iterate went astray."""
@@ -196,6 +199,23 @@ class _Run:
     def stable(self) -> bool:
         return self.border_sign and bool(self.signs.all())
 
+    def refreshed_for_elements(self) -> bool:
+        """Say whether elements are still short, once; exact factors then restore them.
+
+        A dip below zero costs elements, and a step from a kept factor gives them back only as
+        far as the throughflow has not changed since.
+        """
+        if self.restored:
+            return False
+        self.restored = True
+        elements = self.zone.gas.element_matrix
+        inlets = self.zone.inlets(self.zone.shares @ self.moles, self.rate)
+        gap = np.abs((inlets - self.moles) @ elements.T)
+        short = bool(np.any(gap > ELEMENT_TOLERANCE * (inlets @ elements.T) + LEAST_ELEMENTS))
+        if short:
+            self.factors = [None] * self.zone.streams
+        return short
+
     def finish(self) -> ZoneState:
         """Return the last iterate with the temperatures that belong to it."""
         zone = self.zone
@@ -245,6 +265,8 @@ def newton(
     while count < iterations and (count < WANDERING or size < WANDERED):
         size = run.advance()
         count += 1
+        if size <= tolerance and inverse_step == 0.0 and run.refreshed_for_elements():
+            continue
         if size <= tolerance:
             return Outcome(run.finish(), True, size, count, run.stable)
         if not size < np.inf:

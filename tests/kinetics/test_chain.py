@@ -221,6 +221,25 @@ def test_elements_and_enthalpy_close(gas, equivalence_ratio, unmixedness, recirc
     assert chain.unmixedness == pytest.approx(unmixedness, rel=1e-9)
 
 
+def test_elements_close_where_trace_species_dip_on_the_way(gas):
+    """A rich, hot, unmixed syngas: its iterates leave the positive orthant and must come back."""
+    syngas = gas.from_mole_fractions({"H2": 0.4, "CO": 0.4, "N2": 0.2})
+    primary = front(
+        gas,
+        3.46,
+        913.0,
+        1.26e5,
+        unmixedness=0.58,
+        recirculation=0.5,
+        residence_time=4e-4,
+        fuel_fractions=syngas,
+        ratio=0.2,
+    )
+    chain = burn(gas, 1.26e5, primary, tail(gas, primary, 913.0, 1.26e5))
+    assert chain.status == "burning"
+    assert chain.balances.elements < 1e-11
+
+
 @pytest.mark.parametrize("inlet", [600.0, 450.0])
 def test_a_warm_start_changes_nothing(gas, inlet):
     primary = front(gas, 0.7, inlet)
