@@ -174,7 +174,7 @@ def _fitted(text: str, width: int, ascii_only: bool) -> str:
 
 def _number(value: float) -> str:
     """Return a number in at most eight characters."""
-    text = f"{value:.3g}"
-    if "e" not in text or 1e3 <= abs(value) < 1e7:
-        text = f"{value:.0f}" if abs(value) >= 1000 else text
-    return text
+    if 1000.0 <= abs(value) < 1e7:
+        return f"{value:.0f}"
+    texts = (f"{value:.{figures}g}" for figures in (3, 2, 1))
+    return next(text for text in texts if len(text) < _GUTTER)

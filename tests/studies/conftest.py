@@ -1,4 +1,3 @@
-import json
 from pathlib import Path
 
 import pytest
@@ -34,8 +33,3 @@ def metal_case(metal_text: str) -> Case:
 def diameter(metal_case: Case) -> float:
     """Dilution holes of that machine, m."""
     return next(o.diameter for o in metal_case.hardware.openings if o.name == "dilution")
-
-
-def lines_of(path: Path) -> list[str]:
-    """The finished ratings in a results file, in the order of row and point."""
-    return sorted(path.read_text().splitlines()[1:], key=lambda line: json.loads(line)["row"])
