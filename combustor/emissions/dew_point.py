@@ -23,7 +23,7 @@ ACID_DEW_POINT = Method(
     source="Verhoff & Banchero 1974: 1000/T = 2.276 - 0.0294 ln p_H2O - 0.0858 ln p_SO3 + 0.0062 "
     "ln p_H2O ln p_SO3, mmHg",
     reading="as given in",
-    scatter="a few K",
+    scatter="5 K between the two forms, 0.1 to 10 ppm SO3",
     note="constants as given with a worked example of 402 K; copies misprint 0.0062 as 0.0082",
 )
 ACID_DEW_POINT_OKKES = Method(
@@ -32,7 +32,7 @@ ACID_DEW_POINT_OKKES = Method(
     source="Okkes 1987: t = 203.25 + 27.6 lg p_H2O + 10.83 lg p_SO3 + "
     "1.06 (lg p_SO3 + 8)^2.19, atm",
     reading="as given in",
-    scatter="a few K",
+    scatter="5 K between the two forms, 0.1 to 10 ppm SO3",
 )
 
 
