@@ -30,6 +30,8 @@ LINER_FITS_LENGTH = Method(
 LENGTH_MARGIN = 1.01
 LEAST_DILUTION_RATIO = 0.5
 LEAST_RATIO_IN_RING = 0.30
+LEAST_JET_LOSS = 0.3
+_LAW_PASSES = 4
 # the annulus is sized on inlet totals; behind the diffuser the air is 1 to 2 % faster
 _MACH_MARGIN = 0.98
 _RATIO_STEP = 0.0025
@@ -118,6 +120,7 @@ def frame_of(
     front_share: float,
     is_firm: bool = True,
     burnout: Burnout | None = None,
+    drawn: float | None = None,
 ) -> Frame:
     """Return liner, diffuser and lengths.
 
@@ -135,6 +138,9 @@ def frame_of(
         False while the losses are only guessed: a liner a little too long is let pass.
     burnout : Burnout or None
         Of a lean flame; its length takes the place of the secondary zone's.
+    drawn : float or None
+        Liner height that ``loss`` was solved with: the hot loss falls as the liner area squared,
+        and what it leaves to the jets sets the length. None takes the loss as it is [m]
 
     Raises
     ------
@@ -145,14 +151,22 @@ def frame_of(
     head = corrected_loss(
         inlet.mass_flow, inlet.temperature, inlet.pressure, casing.area, inlet.gas_constant
     )
-    loss_factor = loss.jets / head * _law_share(section, casing)
-    needed = LENGTH_MARGIN * zones.length_ratio_for(
-        targets.pattern_factor, loss_factor, section.is_round
-    )
-    needed = max(needed, _shortest(targets))
-    builder = _Builder(case, duty, section, casing, needed, is_firm, front_share, burnout)
-    ratio, method, rival, note = _liner_ratio(builder, head, front_share)
-    height = round(section.height(ratio * casing.area), 3)
+    height = section.largest_liner(casing.height, targets.sheet_thickness)
+    for _ in range(_LAW_PASSES):
+        before = height
+        loss_factor = loss.jets / head * _law_share(section, casing, height)
+        needed = LENGTH_MARGIN * zones.length_ratio_for(
+            targets.pattern_factor, loss_factor, section.is_round
+        )
+        needed = max(needed, _shortest(targets))
+        builder = _Builder(
+            case, duty, section, casing, needed, is_firm, front_share, burnout, loss, drawn
+        )
+        ratio, method, rival, note = _liner_ratio(builder, head, front_share)
+        height = round(section.height(ratio * casing.area), 3)
+        if height == before or section.layout != "can-annular":
+            break
+    needed = builder.length_ratio_at(height)
     shape, other = builder.diffuser(height)
     chart = zones.dilution_length_ratio(targets.pattern_factor, loss_factor)
     ends = _zone_ends(builder, height, chart.value, builder.room(height))
@@ -172,12 +186,11 @@ def frame_of(
     )
 
 
-def _law_share(section: Section, casing: Casing) -> float:
+def _law_share(section: Section, casing: Casing, height: float) -> float:
     """Return the head of the casing over that the pattern-factor law is taken on."""
-    largest = section.largest_liner(casing.height, 0.0)
-    if not math.isfinite(largest) or largest <= 0.0:
+    if section.layout != "can-annular" or height <= 0.0:
         return 1.0
-    return (zones.law_area(casing.area, section.area(largest), True) / casing.area) ** 2
+    return (zones.law_area(casing.area, section.area(height), True) / casing.area) ** 2
 
 
 @dataclass(frozen=True)
@@ -192,6 +205,18 @@ class _Builder:
     is_firm: bool
     front_share: float
     burnout: Burnout | None
+    loss: LossShares
+    drawn: float | None
+
+    def length_ratio_at(self, height: float) -> float:
+        """Return the liner length over height, with the hot loss of that height."""
+        if self.drawn is None:
+            return self.length_ratio
+        hot = self.loss.hot * (self.section.area(self.drawn) / self.section.area(height)) ** 2
+        jets = self.loss.jets + self.loss.hot - hot
+        if jets <= LEAST_JET_LOSS * self.loss.jets:
+            return math.inf
+        return max(self.length_ratio * self.loss.jets / jets, _shortest(self.case.targets))
 
     def annulus_area(self, height: float) -> float:
         outside = height + 2.0 * self.case.targets.sheet_thickness
@@ -241,15 +266,19 @@ class _Builder:
         stated = self.stated_length()
         if stated is not None:
             return stated
-        by_law = self.length_ratio * height
+        by_law = self.length_ratio_at(height) * height
         if self.burnout is None:
             return by_law
         ends = zones.PRIMARY_LENGTH_RATIO + LEAST_DILUTION_RATIO
         # a whole millimetre a zone for rounding
         return max(by_law, ends * height + self.secondary_length(height) + 2e-3)
 
-    def fits(self, height: float) -> bool:
-        return self.needed_length(height) <= self.room(height)
+    def fits(self, height: float, margin: float = LENGTH_MARGIN) -> bool:
+        """Say whether a liner fits the casing, with that margin on the pattern-factor law."""
+        needed = self.needed_length(height)
+        if self.stated_length() is None and self.burnout is None:
+            needed *= margin / LENGTH_MARGIN
+        return needed <= self.room(height)
 
 
 def _shortest(targets: Targets) -> float:
@@ -289,7 +318,8 @@ def _liner_ratio(
         rival = Candidate(ratio, method, "its liner would be too long for the casing")
         ratio, method = _longest_fit(builder, ratio), LINER_FITS_LENGTH
         note = (
-            f"{builder.length_ratio:.2f} liner heights in "
+            f"{builder.length_ratio_at(builder.section.height(ratio * builder.casing.area)):.2f} "
+            "liner heights in "
             f"{1e3 * builder.room(builder.section.height(ratio * builder.casing.area)):.0f} mm"
         )
     return _beside_neighbours(builder, ratio, method, rival, note)
@@ -348,18 +378,20 @@ def _longest_fit(builder: _Builder, ratio: float) -> float:
 
     A scan: a smaller liner is shorter, but leaves a wider annulus and a longer diffuser.
     """
-    trial = ratio
-    while trial > ratios.LOWEST_RATIO:
-        if builder.fits(builder.section.height(trial * builder.casing.area)):
-            return trial
-        trial -= _RATIO_STEP
+    # the margin on the law is given up before the liner is
+    for margin in (LENGTH_MARGIN, 1.0):
+        trial = ratio
+        while trial > ratios.LOWEST_RATIO:
+            if builder.fits(builder.section.height(trial * builder.casing.area), margin):
+                return trial
+            trial -= _RATIO_STEP
     _check_length(builder, ratios.LOWEST_RATIO)
     return ratios.LOWEST_RATIO
 
 
 def _check_length(builder: _Builder, ratio: float) -> None:
     height = builder.section.height(ratio * builder.casing.area)
-    if builder.fits(height) or not builder.is_firm:
+    if builder.fits(height, 1.0) or not builder.is_firm:
         return
     room = builder.room(height)
     targets = builder.case.targets
@@ -369,7 +401,7 @@ def _check_length(builder: _Builder, ratio: float) -> None:
         "the stated zone lengths add up to"
         if stated is not None
         else f"a pattern factor of {targets.pattern_factor:.3g} needs a liner of "
-        f"{builder.length_ratio:.2f} liner heights, at a liner area ratio of {ratio:.2f}"
+        f"{builder.length_ratio_at(height):.2f} liner heights, at a liner area ratio of {ratio:.2f}"
     )
     if builder.burnout is not None and stated is None:
         reason = (
@@ -397,7 +429,7 @@ def _zone_ends(
     if targets.dilution_length is not None:
         dilution = _whole(targets.dilution_length)
     else:
-        by_law = builder.length_ratio * height - primary - secondary
+        by_law = builder.length_ratio_at(height) * height - primary - secondary
         # the longer of the two rules where the casing has the room, the law's length at least
         most = math.floor(room * 1e3 + 1e-6) / 1e3 - primary - secondary
         dilution = min(max(by_law, chart * height), most)

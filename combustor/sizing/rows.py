@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass
 
-from combustor.airflow.jets import penetration_row
+from combustor.airflow.jets import penetration_row, penetration_single
 from combustor.base.method import Method
 from combustor.sizing.section import Section
 
@@ -28,7 +28,8 @@ HOLDEMAN_COUNT = Method(
 ROW_PITCH = Method(
     key="row-pitch",
     quantity="pitch over hole diameter along a row",
-    source="ligament of at least half a diameter; one diameter aimed at",
+    source="ligament of at least half a diameter; one diameter aimed at in a can, 0.8 in a "
+    "ring, whose jets need not reach far",
     reading="common practice, no source",
     validity={"pitch_over_diameter": (1.5, math.inf)},
 )
@@ -42,7 +43,7 @@ ROW_POSITION = Method(
 
 PENETRATION_ROUND, PENETRATION_RING = 0.33, 0.40
 LEAST_COUNT, LEAST_COUNT_RING = 6, 12
-AIMED_PITCH, LEAST_PITCH = 2.0, 1.5
+AIMED_PITCH, AIMED_PITCH_RING, LEAST_PITCH = 2.0, 1.8, 1.5
 WEAK_MOMENTUM_RATIO = 10.0
 
 
@@ -59,6 +60,8 @@ class RowConditions:
     discharge_coefficient : float
     momentum_ratio : float
         J, jet over local hot gas [-]
+    jet_angle : float
+        From the liner axis [rad]
     """
 
     jet_flow: float
@@ -67,6 +70,7 @@ class RowConditions:
     jet_density: float
     discharge_coefficient: float
     momentum_ratio: float
+    jet_angle: float = 0.5 * math.pi
 
 
 @dataclass(frozen=True)
@@ -141,17 +145,16 @@ def plan_row(
     RowPlan
     """
     depth = wanted_penetration(section, liner_height)
-    per_diameter = penetration_row(
-        1.0, conditions.momentum_ratio, conditions.gas_flow, conditions.jet_flow
-    )
+    per_diameter = _penetration_per_diameter(conditions, section)
     squared = holes_times_diameter_squared(conditions)
     free = squared / (depth / per_diameter) ** 2
     drilled_squared = squared / conditions.discharge_coefficient
     perimeter = section.perimeter(liner_height)
     sides = 1 if section.is_round else 2
     least = LEAST_COUNT if section.is_round else LEAST_COUNT_RING
-    most = max(sides * int(perimeter**2 / (sides * AIMED_PITCH**2 * drilled_squared)), least)
-    count, bound = _bounded(free, least, most, sides)
+    pitch = AIMED_PITCH if section.is_round else AIMED_PITCH_RING
+    most = max(sides * int(perimeter**2 / (sides * pitch**2 * drilled_squared)), least)
+    count, bound = _bounded(free, least, most, sides, pitch)
     if stated_count is not None:
         count, bound = stated_count, "count stated in the case"
     jet = math.sqrt(squared / count)
@@ -165,15 +168,23 @@ def plan_row(
     )
 
 
+def _penetration_per_diameter(conditions: RowConditions, section: Section) -> float:
+    """Return penetration over jet diameter, by the law the air split reports it by [-]."""
+    ratio = conditions.momentum_ratio
+    if section.is_round:
+        return penetration_row(1.0, ratio, conditions.gas_flow, conditions.jet_flow)
+    return penetration_single(1.0, ratio, conditions.jet_angle)
+
+
 def pitch_over_diameter(perimeter: float, count: int, diameter: float) -> float:
     """Return hole pitch round the wall over hole diameter [-]."""
     return perimeter / (count * diameter)
 
 
-def _bounded(free: float, least: int, most: int, sides: int) -> tuple[int, str]:
+def _bounded(free: float, least: int, most: int, sides: int, pitch: float) -> tuple[int, str]:
     count = max(sides * round(free / sides), 1)
     if count > most:
-        return most, f"pitch of {AIMED_PITCH:.0f} diameters allows no more"
+        return most, f"pitch of {pitch:g} diameters allows no more"
     if count < least:
         return least, f"at least {least} holes to close the ring"
     return count, ""
