@@ -1,4 +1,4 @@
-"""A first estimate of the film air, slot by slot, and the slots it needs."""
+"""Film slots and their air: the least that holds the wall at every operating point."""
 
 from __future__ import annotations
 
@@ -8,42 +8,29 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
-from combustor.airflow.result import Inlet
 from combustor.base.method import Method
-from combustor.hardware.metal import LinerWall
-from combustor.heat import transport
-from combustor.heat.balance import WallConditions, solve
-from combustor.heat.coefficients import (
-    annulus_coefficient,
-    gas_emissivity,
-    gas_viscosity,
-    unfilmed_coefficient,
-)
-from combustor.heat.conduction import coating_resistance, sheet_resistance
-from combustor.heat.convection import film_coefficient
-from combustor.heat.enclosure import exchange_factor_of
-from combustor.heat.film import slot_film
-from combustor.heat.sides import AnnulusSide, Casing, GasSide, Radiation
+from combustor.hardware.metal import AxialProfile
 from combustor.sizing.film_slots import (
     METERING_PITCH,
     SlotRoom,
-    pitch_by_zone,
+    next_slot,
     slot_rings,
-    slot_stations,
-    zone_index,
 )
 from combustor.sizing.fire import Array
-from combustor.sizing.sketch import Sketch
+from combustor.sizing.sketch import Sketch, SlotRing
+from combustor.sizing.wall_view import Jet, WallView, effectiveness, metal_temperature
 
 FILM_AIR = Method(
-    key="film-air-first-estimate",
-    quantity="air of each film slot",
-    source="least flow that holds the end of the slot's own panel 25 K below the wall target: "
-    "balance of Lefebvre & Herbert 1960, film of Ballal & Lefebvre 1972-73",
-    reading="from memory",
+    key="film-air-least",
+    quantity="slots and air of each slot",
+    source="each slot stands where the films upstream would let the wall pass 25 K below its "
+    "target at the hottest operating point; the slot height and the air common to all slots "
+    "that need the least, then each slot's air reduced until its own panel reaches that limit",
+    reading="derived",
     validity={"blowing_ratio": (0.5, 4.0)},
     scatter="simple wall-temperature methods are good to about 6 %",
-    note="25 K for hot streaks; films from upstream, which jets tear, are the further reserve",
+    note="balance of Lefebvre & Herbert 1960, films of Ballal & Lefebvre 1972-73 laid over each "
+    "other after Sellers 1963; 25 K for hot streaks and for jets that tear the films",
 )
 FILM_AIR_SHARE = Method(
     key="film-air-practice",
@@ -54,7 +41,8 @@ FILM_AIR_SHARE = Method(
 
 USUAL_FILM_AIR = 0.30
 WALL_MARGIN = 25.0
-BLOWING_RANGE = (0.5, 1.25)
+BLOWING_RANGE = (0.5, 4.0)
+COMMON_AIR = (1.0, 1.15, 1.35, 1.6, 2.0, 2.6)
 _STEP_TEMPERATURE = 300.0
 _SETTLED = 2.0
 
@@ -66,16 +54,22 @@ class FilmPlan:
     Parameters
     ----------
     flow : tuple of float
-        One a slot, whole machine [kg/s]
+        One a slot, whole machine, at the design point [kg/s]
     peak : tuple of float
-        Metal at the end of each slot's panel on that slot's film alone [K]
+        Hottest metal of each slot's panel, at any operating point [K]
+    point : tuple of str
+        Operating point of each peak.
     limit : float
         What the panels were held to [K]
+    left : dict of str to AxialProfile
+        Share of each film's air still at the wall at the design point, by opening.
     """
 
     flow: tuple[float, ...]
     peak: tuple[float, ...]
+    point: tuple[str, ...]
     limit: float
+    left: dict[str, AxialProfile]
 
     @property
     def is_cool(self) -> bool:
@@ -83,29 +77,29 @@ class FilmPlan:
         return max(self.peak) <= self.limit + _SETTLED
 
 
+@dataclass(frozen=True)
+class Wall:
+    """The walls to be held: every side at every operating point, the design point first.
+
+    ``limit`` is what the metal is held to, K; ``metering_flux`` the air through metering holes
+    over their area, kg/(s m2); ``air`` the design point's air, kg/s.
+    """
+
+    views: tuple[WallView, ...]
+    limit: float
+    metering_flux: float
+    air: float
+
+
 def plan_films(
-    sketch: Sketch,
-    wall: LinerWall,
-    gas: GasSide,
-    air: AnnulusSide,
-    inlet: Inlet,
-    wall_temperature: float,
-    metering_flux: float,
-    start: Sequence[float] | None = None,
-    passes: int = 14,
+    sketch: Sketch, wall: Wall, start: Sequence[float] | None = None, passes: int = 14
 ) -> FilmPlan:
-    """Return the least film air that holds every panel below the wall target.
+    """Return the least film air that holds every panel of given slots below the limit.
 
     Parameters
     ----------
     sketch : Sketch
-    wall : LinerWall
-    gas, air : GasSide, AnnulusSide
-    inlet : Inlet
-    wall_temperature : float
-        Wall target; the panels are held 25 K below [K]
-    metering_flux : float
-        Air through the metering holes over their area [kg/(s m2)]
+    wall : Wall
     start : sequence of float or None
         Flows to start from [kg/s]
     passes : int
@@ -116,13 +110,11 @@ def plan_films(
     FilmPlan
         `FilmPlan.is_cool` is false where the highest blowing ratio does not suffice.
     """
-    limit = wall_temperature - WALL_MARGIN
-    low, high = _flow_bounds(sketch, gas, metering_flux)
-    flow = np.sqrt(low * high) if start is None else np.clip(np.asarray(start), low, high)
-    panels = _panels(sketch, wall, gas, air)
-    peak = _panel_ends(sketch, gas, inlet, panels, flow)
+    low, high = _flow_bounds(sketch, wall)
+    flow = low if start is None else np.clip(np.asarray(start), low, high)
+    peak, point = panel_peaks(sketch, wall, flow)
     for _ in range(passes):
-        miss = peak - limit
+        miss = peak - wall.limit
         settled = (
             (np.abs(miss) < _SETTLED)
             | ((flow >= high) & (miss > 0.0))
@@ -131,25 +123,19 @@ def plan_films(
         if bool(settled.all()):
             break
         flow = np.clip(flow * np.exp(np.clip(miss / _STEP_TEMPERATURE, -0.5, 0.5)), low, high)
-        peak = _panel_ends(sketch, gas, inlet, panels, flow)
-    return FilmPlan(tuple(flow.tolist()), tuple(peak.tolist()), limit)
+        peak, point = panel_peaks(sketch, wall, flow)
+    return FilmPlan(
+        tuple(flow.tolist()), tuple(peak.tolist()), point, wall.limit, _left(sketch, wall, flow)
+    )
 
 
 def lay_slots(
-    sketch: Sketch,
-    bands: Sequence[tuple[float, float]],
-    room: SlotRoom,
-    wall: LinerWall,
-    gas: GasSide,
-    air: AnnulusSide,
-    inlet: Inlet,
-    wall_temperature: float,
-    metering_flux: float,
+    sketch: Sketch, bands: Sequence[tuple[float, float]], room: SlotRoom, wall: Wall
 ) -> tuple[Sketch, FilmPlan]:
     """Return the sketch with its slots, and their air.
 
-    Slots start at the widest pitch and the lowest height. Where a panel is too hot its zone's
-    pitch shortens; when the shortest does not help, the slots become higher.
+    The lowest slot that holds the wall is taken, and of the amounts of air common to all slots
+    the one that needs the least altogether: more air a slot, or more slots.
 
     Parameters
     ----------
@@ -159,119 +145,122 @@ def lay_slots(
         Stretches taken by rows [m]
     room : SlotRoom
         Pitches and heights to choose from.
-    wall, gas, air, inlet, wall_temperature, metering_flux :
-        As for `plan_films`.
+    wall : Wall
 
     Returns
     -------
     tuple of Sketch and FilmPlan
         `FilmPlan.is_cool` is false when nothing in the room holds the wall.
     """
-    drawn, plan = sketch, None
+    best: tuple[Sketch, FilmPlan] | None = None
     for height in room.heights:
-        steps = [0, 0, 0]
-        while True:
-            pitch = pitch_by_zone(sketch.zone_ends, [room.pitches[step] for step in steps])
-            stations = slot_stations(sketch.liner_length, bands, pitch)
-            drawn = replace(sketch, slots=slot_rings(stations, height))
-            plan = plan_films(drawn, wall, gas, air, inlet, wall_temperature, metering_flux)
-            hot = {
-                zone_index(sketch.zone_ends, ring.station)
-                for ring, peak in zip(drawn.slots, plan.peak, strict=True)
-                if peak > plan.limit + _SETTLED
-            }
-            if not hot:
-                return drawn, plan
-            closer = [zone for zone in hot if steps[zone] + 1 < len(room.pitches)]
-            if not closer:
-                break
-            for zone in closer:
-                steps[zone] += 1
-    assert plan is not None
-    return drawn, plan
+        held = []
+        for factor in COMMON_AIR:
+            drawn, holds = _laid(sketch, bands, room, wall, height, factor)
+            low, high = _flow_bounds(drawn, wall)
+            total = float(np.clip(factor * low, low, high).sum())
+            if holds:
+                held.append((total, factor, drawn))
+        if held:
+            _, factor, drawn = min(held, key=lambda one: one[0])
+            low, high = _flow_bounds(drawn, wall)
+            plan = plan_films(drawn, wall, (factor * low).tolist())
+            best = drawn, plan
+            if plan.is_cool:
+                return best
+        else:
+            plan = plan_films(drawn, wall, (COMMON_AIR[-1] * low).tolist())
+            if best is None or max(plan.peak) < max(best[1].peak):
+                best = drawn, plan
+    assert best is not None
+    return best
 
 
-def _flow_bounds(sketch: Sketch, gas: GasSide, metering_flux: float) -> tuple[Array, Array]:
+def panel_peaks(sketch: Sketch, wall: Wall, flow: Array) -> tuple[Array, tuple[str, ...]]:
+    """Return the hottest metal of every slot's panel [K] and the operating point it is at."""
+    jets = _jets(sketch, wall, sketch.slots, flow)
+    starts = np.array([ring.station for ring in sketch.slots])
+    peaks = np.zeros((len(wall.views), len(starts)))
+    for row, view in zip(peaks, wall.views, strict=True):
+        hot = metal_temperature(view, view, jets)
+        panel = np.maximum(np.searchsorted(starts, view.station, side="right") - 1, 0)
+        np.maximum.at(row, panel, hot)
+    worst = np.argmax(peaks, axis=0)
+    return peaks.max(axis=0), tuple(wall.views[index].point for index in worst)
+
+
+def _laid(
+    sketch: Sketch,
+    bands: Sequence[tuple[float, float]],
+    room: SlotRoom,
+    wall: Wall,
+    height: float,
+    factor: float,
+) -> tuple[Sketch, bool]:
+    """Return the sketch with slots as far apart as the wall allows, and whether it is held."""
+    places = [0.0]
+    holds = True
+    length = sketch.liner_length
+    while True:
+        drawn = replace(sketch, slots=slot_rings(places, height))
+        low, high = _flow_bounds(drawn, wall)
+        jets = _jets(drawn, wall, drawn.slots, np.clip(factor * low, low, high))
+        last = places[-1]
+        end = min(last + room.longest, length)
+        reach = min(_reach(view, jets, last, end, wall.limit) for view in wall.views)
+        following, is_short = next_slot(last, reach, end, length, bands, room)
+        holds = holds and not is_short
+        if following is None:
+            return drawn, holds
+        places.append(following)
+
+
+def _reach(view: WallView, jets: Sequence[Jet], last: float, end: float, limit: float) -> float:
+    """Return how far from the last slot the wall stays below the limit [m]."""
+    part = view.part(last, end)
+    if part.station.size == 0:
+        return end
+    hot = metal_temperature(part, view, jets) > limit
+    if not hot.any():
+        return end
+    first = int(np.argmax(hot))
+    return last if first == 0 else float(part.station[first - 1])
+
+
+def _flow_bounds(sketch: Sketch, wall: Wall) -> tuple[Array, Array]:
+    """Return the least and the most air of each slot, whole machine [kg/s]."""
+    view = wall.views[0]
     stations = np.array([ring.station for ring in sketch.slots])
     heights = np.array([ring.height for ring in sketch.slots])
     around = heights * sketch.perimeter * sketch.section.cans
-    at_one = gas.at("mass_flow", stations) / gas.at("area", stations) * around
-    sparsest = 0.25 * math.pi / METERING_PITCH * metering_flux * around
+    at_one = np.interp(stations, view.station, view.mass_flux) * around
+    sparsest = 0.25 * math.pi / METERING_PITCH * wall.metering_flux * around
     low = np.maximum(BLOWING_RANGE[0] * at_one, sparsest)
     return low, np.maximum(BLOWING_RANGE[1] * at_one, low)
 
 
-@dataclass(frozen=True)
-class _Panels:
-    """Wall conditions at the end of every panel but for the films, and where that is [m]."""
-
-    station: Array
-    viscosity: Array
-    bare: WallConditions
-
-
-def _panels(sketch: Sketch, wall: LinerWall, gas: GasSide, air: AnnulusSide) -> _Panels:
-    starts = [ring.station for ring in sketch.slots]
-    x = np.array([*starts[1:], sketch.liner_length]) - 1e-6
-    unfilmed = unfilmed_coefficient(gas, x, x < sketch.zone_ends[0])
-    bare = WallConditions(
-        gas_temperature=gas.at("temperature", x),
-        adiabatic_wall_temperature=gas.at("temperature", x),
-        air_temperature=air.at("temperature", x),
-        gas_emissivity=gas_emissivity(gas, x, wall.beam_length, Radiation("grey-gas")),
-        gas_coefficient=unfilmed,
-        air_coefficient=annulus_coefficient(air, x),
-        film_warming=np.zeros_like(x),
-        hole_conductance=np.zeros_like(x),
-        wall_emissivity=wall.emissivity,
-        sheet_resistance=sheet_resistance(wall),
-        coating_resistance=coating_resistance(wall),
-        exchange_factor=exchange_factor_of(wall),
-        casing_area_ratio=wall.casing_area_ratio,
-        casing=Casing(),
-    )
-    return _Panels(x, gas_viscosity(gas, x), bare)
-
-
-def _panel_ends(
-    sketch: Sketch,
-    gas: GasSide,
-    inlet: Inlet,
-    panels: _Panels,
-    flow: Array,
-) -> Array:
-    """Return the metal temperature at every panel's end, each on its own film [K]."""
-    air_viscosity = float(transport.viscosity(inlet.temperature))
-    air_conductivity = float(transport.conductivity(inlet.temperature))
-    slot_area = sketch.perimeter * sketch.section.cans
-    seen, coefficient = [], []
-    for place, ring in enumerate(sketch.slots):
-        flux = float(flow[place]) / (ring.height * slot_area)
-        gas_flux = float(gas.at("mass_flow", ring.station) / gas.at("area", ring.station))
-        distance = panels.station[place : place + 1] - ring.station
-        film = slot_film(
-            flux / gas_flux,
-            air_viscosity / panels.viscosity[place : place + 1],
-            distance,
+def _jets(sketch: Sketch, wall: Wall, rings: Sequence[SlotRing], flow: Array) -> list[Jet]:
+    around = sketch.perimeter * sketch.section.cans
+    return [
+        Jet(
+            ring.station,
             ring.height,
             ring.lip_thickness,
+            float(one) / (wall.air * ring.height * around),
         )
-        hot = panels.bare.gas_temperature[place]
-        seen.append(hot - film.effectiveness[0] * (hot - inlet.temperature))
-        coefficient.append(
-            film_coefficient(
-                flux / gas_flux,
-                air_conductivity,
-                flux,
-                air_viscosity,
-                distance,
-                ring.height,
-                panels.bare.gas_coefficient[place : place + 1],
-            )[0]
-        )
-    filmed = replace(
-        panels.bare,
-        adiabatic_wall_temperature=np.array(seen),
-        gas_coefficient=np.array(coefficient),
-    )
-    return solve(filmed).hot_side
+        for ring, one in zip(rings, flow, strict=True)
+    ]
+
+
+def _left(sketch: Sketch, wall: Wall, flow: Array) -> dict[str, AxialProfile]:
+    """Return the share of each film still at the wall at the design point, by opening."""
+    jets = _jets(sketch, wall, sketch.slots, flow)
+    left = {}
+    for side, view in zip(sketch.sides, wall.views, strict=False):
+        stations = tuple(view.station.tolist())
+        for ring, eta in zip(sketch.slots, effectiveness(view, view, jets), strict=True):
+            name = sketch.names(ring.name)[sketch.sides.index(side)]
+            behind = view.station >= ring.station
+            falling = np.minimum.accumulate(np.where(behind, eta, 1.0))
+            left[name] = AxialProfile(stations, tuple(falling.tolist()))
+    return left

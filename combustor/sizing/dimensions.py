@@ -451,7 +451,7 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
         film_slots.SLOT_HEIGHT if targets.slot_height is None else diffuser.STATED,
     )
     yield Dimension("film slot lip", slots[0].lip_thickness, "length", film_slots.SLOT_HEIGHT)
-    for ring, peak in zip(slots, film_plan.peak, strict=True):
+    for ring, peak, point in zip(slots, film_plan.peak, film_plan.point, strict=True):
         openings = [rounded.hardware.opening(name) for name in rounded.sketch.names(ring.name)]
         opening = openings[0]
         inner = "".join(f"; inner wall {one.count}" for one in openings[1:])
@@ -461,8 +461,8 @@ def _films(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
             "count",
             film_slots.METERING_HOLES,
             None,
-            f"{1e3 * _diameter(opening):.1f} mm at x {1e3 * ring.station:.0f} mm; panel ends at "
-            f"{peak:.0f} K on this film alone{inner}",
+            f"{1e3 * _diameter(opening):.1f} mm at x {1e3 * ring.station:.0f} mm; panel "
+            f"reaches {peak:.0f} K at {point}{inner}",
         )
 
 

@@ -3,18 +3,22 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from combustor.base.method import Method
+from combustor.hardware.film_decay import FAR_START
 from combustor.sizing.drill import nearest_drill
 from combustor.sizing.sketch import Sketch, SlotRing
 
 SLOT_PITCH = Method(
     key="slot-pitch",
     quantity="distance from film slot to film slot",
-    source="25 to 50 mm ring to ring; a row of holes lies whole inside one panel",
+    source="25 to 50 mm ring to ring in short aero liners; as far apart as the wall allows in "
+    "longer ones, to 100 mm or 150 slot heights, since jets tear films and rings stiffen the "
+    "sheet; a row of holes lies whole inside one panel",
     reading="common practice, no source",
+    note="slot_pitch sets the longest panel",
 )
 SLOT_HEIGHT = Method(
     key="slot-height",
@@ -33,7 +37,7 @@ METERING_HOLES = Method(
     note="sets the least air of a slot",
 )
 
-PITCHES = (50e-3, 40e-3, 32e-3, 25e-3)
+SHORTEST, LONGEST = 20e-3, 100e-3
 LOWEST_SLOT, HIGHEST_SLOT, SLOT_STEP = 1.0e-3, 3.0e-3, 0.5e-3
 LOWEST_SLOT_SHARE = 0.004
 LIP_SHARE, LEAST_LIP = 0.4, 0.5e-3
@@ -44,56 +48,65 @@ WIDEST_METERING = 1.5
 
 @dataclass(frozen=True)
 class SlotRoom:
-    """Slot pitches to choose from, falling, and heights, rising; m."""
+    """Shortest and longest panel, and slot heights to choose from, rising; m."""
 
-    pitches: tuple[float, ...]
+    shortest: float
+    longest: float
     heights: tuple[float, ...]
 
 
-def slot_stations(
+def next_slot(
+    last: float,
+    reach: float,
+    end: float,
     length: float,
     bands: Sequence[tuple[float, float]],
-    pitch: float | Callable[[float], float],
-) -> tuple[float, ...]:
-    """Return where slots stand: pitch at most, none within a band of holes.
+    room: SlotRoom,
+) -> tuple[float | None, bool]:
+    """Return where the next slot stands, and whether that is later than the wall allows.
 
     Parameters
     ----------
+    last : float
+        The slot before [m]
+    reach : float
+        As far as the wall stays cool without another slot [m]
+    end : float
+        As far as a panel may reach [m]
     length : float
         Liner [m]
     bands : sequence of (start, end)
-        Stretches taken by rows [m]
-    pitch : float or callable
-        Largest distance from slot to slot, or that by station; a panel with a row may be
-        longer [m]
+        Stretches taken by rows; a row lies whole inside one panel [m]
+    room : SlotRoom
 
     Returns
     -------
-    tuple of float
-        To whole millimetres, the first at the dome [m]
+    tuple of float or None, and bool
+        To whole millimetres; None where the liner ends before another is needed.
     """
-    found: list[float] = []
-    begin = 0.0
-    for start, end in [*_merged(bands), (length, length)]:
-        most = pitch(0.5 * (begin + start)) if callable(pitch) else pitch
-        panels = max(math.ceil((end - begin) / most - 1e-9), 1)
-        places = [begin + (end - begin) * index / panels for index in range(panels)]
-        found += [min(place, start) for place in places]
-        begin = end
-    whole = sorted({round(place, 3) for place in found if place < length - BAND_MARGIN})
-    return tuple(
-        place
-        for index, place in enumerate(whole)
-        if index == 0 or place - whole[index - 1] > BAND_MARGIN
-    )
+    if reach >= length - 1e-9:
+        return None, False
+    if length - last <= room.shortest:
+        return None, reach < length - BAND_MARGIN
+    place = max(reach, last + room.shortest)
+    for start, stop in _merged(bands):
+        if start < place < stop:
+            # before the row where that leaves room, else behind it
+            place = start if start - last >= room.shortest else stop
+            break
+    whole = math.floor(1e3 * place + 1e-6) / 1e3
+    if whole >= length - BAND_MARGIN:
+        return None, reach < length - BAND_MARGIN
+    return whole, whole > max(reach, 0.0) + 2e-3 and reach < end - 1e-9
 
 
 def slot_room(liner_height: float, pitch: float | None, height: float | None) -> SlotRoom:
     """Return what slots may be: stated pitch and height, else the ranges of practice [m]."""
-    return SlotRoom(
-        PITCHES if pitch is None else (pitch,),
-        slot_heights(liner_height) if height is None else (height,),
-    )
+    heights = slot_heights(liner_height) if height is None else (height,)
+    longest = min(FAR_START * heights[0], LONGEST)
+    if pitch is not None:
+        longest = pitch
+    return SlotRoom(min(SHORTEST, longest), longest, heights)
 
 
 def slot_heights(liner_height: float) -> tuple[float, ...]:
@@ -149,16 +162,6 @@ def with_metering(sketch: Sketch, areas: Mapping[str, float]) -> Sketch:
         for ring in sketch.slots
     )
     return replace(sketch, slots=rings)
-
-
-def zone_index(zone_ends: Sequence[float], station: float) -> int:
-    """Return 0, 1 or 2 for a station in the primary, secondary or dilution zone."""
-    return min(sum(station >= end for end in zone_ends), len(zone_ends) - 1)
-
-
-def pitch_by_zone(zone_ends: Sequence[float], pitches: Sequence[float]) -> Callable[[float], float]:
-    """Return the pitch by station, one for each zone."""
-    return lambda station: pitches[zone_index(zone_ends, station)]
 
 
 def _merged(bands: Sequence[tuple[float, float]]) -> list[tuple[float, float]]:

@@ -155,7 +155,7 @@ def _wall(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:
         level = "act"
     yield Finding(
         level,
-        "wall temperature, first estimate on single films",
+        f"peak wall temperature, at {plan.point[plan.peak.index(peak)]}",
         peak,
         task.case.targets.wall_temperature,
         "K",

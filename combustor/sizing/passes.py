@@ -10,8 +10,10 @@ import numpy as np
 
 from combustor.airflow.discharge import METERING_STATIC
 from combustor.airflow.result import AirSplit
+from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.hardware.zone_air import mixed_share
-from combustor.sizing import cooling, film_slots, wall_sides
+from combustor.heat.sides import Radiation
+from combustor.sizing import cooling, film_slots
 from combustor.sizing.air_budget import AirBudget, BudgetDemand, budget
 from combustor.sizing.cooling import FilmPlan
 from combustor.sizing.draft import band, draw_sketch, placed, plans_for
@@ -22,13 +24,11 @@ from combustor.sizing.loop import Aim, Fit, first_areas, fit_areas
 from combustor.sizing.profile import LinerProfile
 from combustor.sizing.rows import RowConditions, RowPlan, plan_row
 from combustor.sizing.sketch import (
-    DOME,
-    PREMIXER,
-    SWIRLER,
     Row,
     Sketch,
 )
 from combustor.sizing.state import State, Task, bare_metal, profile_of, shares_by_opening
+from combustor.sizing.wall_view import views_of
 
 
 def next_state(task: Task, state: State, frozen: bool) -> State:
@@ -50,15 +50,16 @@ def next_state(task: Task, state: State, frozen: bool) -> State:
             state.budget.front,
             is_firm=state.fit is not None,
             burnout=task.burnout,
+            drawn=None if state.fit is None else frame.liner_height,
         )
         plans = plans_for(task, frame, state.budget, state.plans)
         sketch = draw_sketch(task, frame, plans, state.sketch.slots)
         state = replace(state, plans=plans)
     shares = shares_by_opening(state.budget, sketch, state.films)
     flux = _metering_flux(task, state)
-    sketch, plan = _cool(task, sketch, state.plans, shares, flux, state.films if frozen else None)
+    sketch, plan = _cool(task, state, sketch, shares, flux, state.films if frozen else None)
     films = _held_to_stated(task, plan.flow)
-    share_out = _budget(task, sketch, films)
+    share_out = _budget(task, sketch, films, plan.left)
     shares = shares_by_opening(share_out, sketch, films)
     profile = profile_of(task, sketch, shares)
     plans = _rows(task, state, sketch, shares, profile, frozen)
@@ -83,27 +84,44 @@ def next_state(task: Task, state: State, frozen: bool) -> State:
 
 def _cool(
     task: Task,
+    state: State,
     sketch: Sketch,
-    plans: Mapping[str, RowPlan],
     shares: Mapping[str, float],
     flux: float,
     start: tuple[float, ...] | None,
 ) -> tuple[Sketch, FilmPlan]:
     """Return the sketch with its slots and their air; with a start the slots stay."""
-    duty, targets = task.duty, task.case.targets
-    wall, inlet = bare_metal(sketch).walls[0], duty.inlet
-    profile = profile_of(task, sketch, shares)
-    gas = wall_sides.gas_side(
-        sketch, profile, inlet, duty.fuel_flow, inlet.pressure, duty.stoichiometric
-    )
-    front = sum(shares.get(name, 0.0) for name in (SWIRLER, PREMIXER, DOME))
-    air = wall_sides.annulus_side(sketch, profile, inlet, front)
-    wanted = targets.wall_temperature
+    targets = task.case.targets
+    wall = wall_of(task, bare_metal(sketch), shares, flux, _films_left(state))
     if start is not None:
-        return sketch, cooling.plan_films(sketch, wall, gas, air, inlet, wanted, flux, start)
+        return sketch, cooling.plan_films(sketch, wall, start)
     room = film_slots.slot_room(sketch.liner_height, targets.slot_pitch, targets.slot_height)
-    bands = [band(row, plans[row.name]) for row in sketch.rows]
-    return cooling.lay_slots(sketch, bands, room, wall, gas, air, inlet, wanted, flux)
+    bands = [band(row, state.plans[row.name]) for row in sketch.rows]
+    return cooling.lay_slots(sketch, bands, room, wall)
+
+
+def wall_of(
+    task: Task,
+    metal: Hardware,
+    shares: Mapping[str, float],
+    metering_flux: float,
+    films: Mapping[str, AxialProfile] | None,
+) -> cooling.Wall:
+    """Return the walls that films have to hold, for given shares of the air by opening."""
+    views = views_of(
+        metal,
+        task.walls,
+        shares,
+        task.case.model.primary_jet_share,
+        Radiation("grey-gas"),
+        films,
+    )
+    limit = task.case.targets.wall_temperature - cooling.WALL_MARGIN
+    return cooling.Wall(views, limit, metering_flux, task.duty.inlet.mass_flow)
+
+
+def _films_left(state: State) -> Mapping[str, AxialProfile] | None:
+    return None if state.film_plan is None else state.film_plan.left
 
 
 def _metering_flux(task: Task, state: State) -> float:
@@ -124,12 +142,14 @@ def _held_to_stated(task: Task, flow: tuple[float, ...]) -> tuple[float, ...]:
     return tuple(scale * one for one in flow)
 
 
-def _budget(task: Task, sketch: Sketch, films: tuple[float, ...]) -> AirBudget:
+def _budget(
+    task: Task, sketch: Sketch, films: tuple[float, ...], left: Mapping[str, AxialProfile]
+) -> AirBudget:
     targets, metal = task.case.targets, bare_metal(sketch)
     air = task.duty.inlet.mass_flow
     end = sketch.zone_ends[1]
     mixed = sum(
-        flow * mixed_share(metal, metal.opening(sketch.names(ring.name)[0]), end)
+        flow * mixed_share(metal, metal.opening(sketch.names(ring.name)[0]), end, films=left)
         for ring, flow in zip(sketch.slots, films, strict=True)
     )
     demand = BudgetDemand(
@@ -201,10 +221,11 @@ def row_conditions(
     if solved is None:
         drop = 0.8 * (task.case.targets.pressure_loss or 0.0) * inlet.pressure
         velocity, coefficient = math.sqrt(2.0 * drop / density), 0.55
+        angle = 0.4 * math.pi
     else:
         jet = solved.opening(sketch.names(row.name)[0])
         velocity, density = jet.jet_velocity, jet.jet_density
-        coefficient = max(jet.discharge_coefficient, 0.05)
+        coefficient, angle = max(jet.discharge_coefficient, 0.05), jet.jet_angle
     return RowConditions(
         jet_flow=share * inlet.mass_flow / cans,
         gas_flow=gas_flow,
@@ -212,6 +233,7 @@ def row_conditions(
         jet_density=density,
         discharge_coefficient=coefficient,
         momentum_ratio=density * velocity**2 / (gas_density * gas_velocity**2),
+        jet_angle=angle,
     )
 
 

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 
 from combustor.airflow.result import AirSplit
 from combustor.airflow.split import split
-from combustor.hardware.metal import Hardware
+from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.hardware.zone_air import zone_air
 from combustor.sizing.drill import drill_step
 from combustor.sizing.film_slots import with_metering
@@ -54,12 +54,14 @@ def round_to_drills(task: Task, state: State) -> Rounded:
     assert state.fit is not None
     sketch = with_metering(state.sketch, state.fit.areas)
     areas = dict(state.fit.areas)
-    best = _solve(task, sketch, areas, state.fit.split, state.shares)
+    assert state.film_plan is not None
+    films = state.film_plan.left
+    best = _solve(task, sketch, areas, state.fit.split, state.shares, films)
     for _ in range(_ROUNDS):
         if best.miss <= _GOOD:
             break
         tried = [
-            (_solve(task, sketch, moved, best.split, state.shares), moved)
+            (_solve(task, sketch, moved, best.split, state.shares, films), moved)
             for moved in _moves(sketch, areas, best.hardware)
         ]
         nearest, moved = min(tried, key=lambda pair: pair[0].miss)
@@ -75,6 +77,7 @@ def _solve(
     areas: Mapping[str, float],
     guess: AirSplit,
     shares: Mapping[str, float],
+    films: Mapping[str, AxialProfile],
 ) -> Rounded:
     hardware = metal_of(sketch, areas, drilled=True)
     solved = guess
@@ -88,7 +91,7 @@ def _solve(
         solved = split(hardware, task.duty.inlet, gas, guess=solved)
         total = sum(flow.mass_flow for flow in solved.openings)
         flows = {flow.name: flow.mass_flow / total for flow in solved.openings}
-    zones = _zones(task, hardware, flows)
+    zones = _zones(task, hardware, flows, films)
     wanted = task.case.targets.pressure_loss
     assert wanted is not None
     miss = max(
@@ -98,8 +101,13 @@ def _solve(
     return Rounded(sketch, hardware, solved, zones, miss)
 
 
-def _zones(task: Task, hardware: Hardware, flows: Mapping[str, float]) -> tuple[ZoneTarget, ...]:
-    air = zone_air(hardware, flows, task.case.model.primary_jet_share)
+def _zones(
+    task: Task,
+    hardware: Hardware,
+    flows: Mapping[str, float],
+    films: Mapping[str, AxialProfile],
+) -> tuple[ZoneTarget, ...]:
+    air = zone_air(hardware, flows, task.case.model.primary_jet_share, films)
     wanted = task.case.targets.equivalence_ratio
     primary = ZoneTarget("primary", wanted.primary, task.duty.overall / air["primary"])
     if task.front_end == "lean-premixed":

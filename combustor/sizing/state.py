@@ -26,19 +26,25 @@ from combustor.sizing.sketch import (
     SWIRLER,
     Sketch,
 )
+from combustor.sizing.wall_duty import WallDuty
 
 CROSS_FIRE_SHARE = 0.25
 
 
 @dataclass(frozen=True)
 class Task:
-    """What stays the same from pass to pass; ``burnout`` is a lean flame's."""
+    """What stays the same from pass to pass.
+
+    ``burnout`` is a lean flame's; ``walls`` are the operating points that may heat the wall
+    most, the design point first.
+    """
 
     case: Case
     duty: Duty
     section: Section
     casing: Casing
     burnout: Burnout | None = None
+    walls: tuple[WallDuty, ...] = ()
 
     @property
     def front_end(self) -> str:

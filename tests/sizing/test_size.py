@@ -92,7 +92,8 @@ def test_numbers_an_engineer_would_believe(design, task):
     assert 0.55 < (metal.liner_height / metal.reference_height) ** 2 < 0.78
     assert 2.5 < metal.liner_length / metal.liner_height < 4.5
     assert 0.03 <= share["swirler"] <= 0.125
-    assert 0.15 <= share["film"] <= 0.40
+    # the least that holds 1123 K at 10 bar; early liners took 25 to 40 %
+    assert 0.10 <= share["film"] <= 0.25
     assert 0.15 <= share["dilution"] <= 0.50
     assert design.fuel_flow == pytest.approx(0.245, abs=0.002)
     for row in ("primary", "secondary", "dilution"):
