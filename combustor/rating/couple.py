@@ -37,12 +37,15 @@ class Coupled:
     convergence : Convergence
         Residual: the largest change of an opening's flow over the inlet air between the last
         two passes.
+    fuel_correction : float
+        Fuel flow over that of complete combustion to the exit temperature.
     """
 
     split: AirSplit
     fire: Fire
     walls: tuple[WallMarch, ...]
     convergence: Convergence
+    fuel_correction: float = 1.0
 
 
 def couple(
@@ -80,8 +83,12 @@ def couple(
         solved = split(
             hardware, operating.inlet, hot, annulus_heat_of(near.walls), guess=near.split
         )
-        warm, losses = near.fire.chain, heat_losses_of(near.fire, near.walls)
-        films = film_shares(near.walls)
+        # the neighbour's fire beside this machine's own air: films and heat start close
+        walls = walls_of(gas, operating, hardware, solved, near.fire, fuel, settings)
+        warm, losses = near.fire.chain, heat_losses_of(near.fire, walls)
+        films = film_shares(walls)
+        if wanted is not None:
+            fuel_flow *= near.fuel_correction
     else:
         cold = split(hardware, operating.inlet)
         hot = _first_fire(operating, hardware, cold, settings)
@@ -126,7 +133,8 @@ def couple(
             and _heat_moved(losses, new_losses) < 1e-6 * fuel_flow * operating.lower_heating_value
             and _temperature_met(operating, fire, settings)
         ):
-            return Coupled(solved, fire, walls, Convergence(True, change, passes))
+            correction = fire.fuel_flow / operating.fuel_flow
+            return Coupled(solved, fire, walls, Convergence(True, change, passes), correction)
         previous, warm, losses, solved, fuel_flow = (
             fire,
             fire.chain,
