@@ -11,7 +11,7 @@ from combustor import __version__
 _QUANTITIES = 'Quantities take a unit ("700 K", "20 bar", "5 ms", "5 %"); bare numbers are SI.'
 _EXIT_CODES = (
     "exit codes: 0 good; 1 a limit broken, a point blown out or not converged, no design "
-    "possible; 2 bad input"
+    "possible,\na verdict other than inside; 2 bad input"
 )
 
 

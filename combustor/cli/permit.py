@@ -46,7 +46,7 @@ def comply(arguments: argparse.Namespace) -> Answer:
         if arguments.json
         else set_report(comply_report(check))
     )
-    return Answer(text, EXIT_GOOD if check.inside else EXIT_LIMIT, notes)
+    return Answer(text, EXIT_LIMIT if check.inside is False else EXIT_GOOD, notes)
 
 
 def convert(arguments: argparse.Namespace) -> Answer:

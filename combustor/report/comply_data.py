@@ -9,6 +9,7 @@ from combustor.emissions.dew_point import acid_dew_point, water_dew_point
 from combustor.emissions.emission_unit import read_unit
 from combustor.emissions.fuel_factor import DEFAULTS, FuelFactors, factors_of_fuel, per_heat
 from combustor.emissions.pollutant import POLLUTANTS
+from combustor.emissions.smoke import soot_trend
 from combustor.emissions.stack import FactMissing, Stack
 from combustor.report import permit_fields as fields
 from combustor.report.document import Table
@@ -21,9 +22,12 @@ COMPLY_TABLES = (
     "concentrations",
     "masses",
     "dew_points",
+    "smoke",
     "fuel_factors",
 )
+SMOKE_TITLE = "Smoke, relative trend alone (within a factor of 3; no smoke number)"
 _US_OXYGEN = 0.209
+_NO_SMOKE = 0.18  # hydrogen by mass, where the trend ends
 _CONCENTRATIONS = {
     "ppmvw": "ppmvw",
     "ppmvd": "ppmvd",
@@ -53,6 +57,7 @@ def comply_data(check: ComplyCheck) -> tuple[Table, ...]:
         Table("concentrations", "Concentrations", fields.CONCENTRATIONS, concentrations(check)),
         Table("masses", "Masses", fields.MASSES, masses(check)),
         Table("dew_points", "Dew points", fields.DEW_POINTS, dew_points(check)),
+        Table("smoke", SMOKE_TITLE, fields.SMOKE, smoke_trend(check)),
         Table("fuel_factors", "Fuel factors", fields.FUEL_FACTORS, fuel_factors(check)),
     )
 
@@ -122,6 +127,29 @@ def dew_points(check: ComplyCheck) -> tuple[dict[str, Any], ...]:
                 "acid_dew_point_degC": None if acid is None else acid - 273.15,
             }
         )
+    return tuple(found)
+
+
+def smoke_trend(check: ComplyCheck) -> tuple[dict[str, Any], ...]:
+    """Return soot formation of a liquid fuel relative to the first burning point."""
+    fuel = check.burnt
+    if fuel.phase != "liquid" or fuel.hydrogen_mass_fraction >= _NO_SMOKE:
+        return ()
+    found: list[dict[str, Any]] = []
+    first = None
+    for rated in check.ratings.points:
+        zone = next((z for z in rated.zones if z.temperature is not None), None)
+        if rated.emissions is None or zone is None or zone.temperature is None:
+            continue
+        soot = soot_trend(
+            zone.equivalence_ratio * fuel.stoichiometric_fuel_air_ratio,
+            rated.inlet.pressure,
+            rated.inlet.air_flow * zone.air_fraction,
+            zone.temperature,
+            fuel.hydrogen_mass_fraction,
+        )
+        first = soot if first is None else first
+        found.append({"point": rated.name, "relative_soot": soot / first})
     return tuple(found)
 
 

@@ -11,11 +11,13 @@ from combustor.emissions.verdict import Verdict
 from combustor.report import permit_fields as fields
 from combustor.report.cautions import sentence
 from combustor.report.comply_data import (
+    SMOKE_TITLE,
     concentrations,
     dew_points,
     fuel_factors,
     gap_records,
     masses,
+    smoke_trend,
 )
 from combustor.report.document import Block, Facts, Heading, Prose, Table
 from combustor.report.field import Field, row, select
@@ -75,6 +77,7 @@ def comply_document(check: ComplyCheck, version: str) -> dict[str, Any]:
         "concentrations": list(concentrations(check)),
         "masses": list(masses(check)),
         "dew_points": list(dew_points(check)),
+        "smoke_trend": list(smoke_trend(check)),
         "fuel_factors": list(fuel_factors(check)),
         "rules": [
             {
@@ -180,6 +183,7 @@ def _bases(check: ComplyCheck) -> list[Block]:
     if not check.stacks:
         return []
     shown = _worth_showing(check)
+    smoke = smoke_trend(check)
     volumes = tuple(line for line in concentrations(check) if line["pollutant"] in shown)
     weights = tuple(line for line in masses(check) if line["pollutant"] in (*shown, "CO2"))
     return [
@@ -209,6 +213,7 @@ def _bases(check: ComplyCheck) -> list[Block]:
             _filled(fields.DEW_POINTS, dew_points(check)),
             dew_points(check),
         ),
+        *([Table("smoke", SMOKE_TITLE, fields.SMOKE, smoke)] if smoke else []),
     ]
 
 

@@ -74,6 +74,10 @@ DEW_POINTS = (
     Field("so3_ppmvd_15", "SO3", "", "ppmvd@15", 1.0, figures=3),
     Field("acid_dew_point_degC", "acid\ndew point", "", "degC", 1.0, decimals=1),
 )
+SMOKE = (
+    Field("point", "point"),
+    Field("relative_soot", "relative\nsoot", "", "-", 1.0, figures=2),
+)
 FUEL_FACTORS = (
     Field("factor", "factor"),
     Field("dry", "dry Fd", "", "dscf/MMBtu", 1.0, decimals=0),

@@ -43,12 +43,17 @@ class Gap:
 def gaps_of(case: Case, ratings: Ratings, verdicts: Iterable[Verdict]) -> tuple[Gap, ...]:
     """Return the widest gap of each pollutant, with what would close it.
 
-    Options of one choice count by their nearest limit.
+    Options of one choice count by their nearest limit; rows that may bind count only where
+    none does.
     """
     worst: dict[str, Verdict] = {}
-    for verdict in _nearest_options(verdicts):
+    nearest = _nearest_options(verdicts)
+    bound = {v.pollutant for v in nearest if v.verdict != "undecided"}
+    for verdict in nearest:
         factor = _factor(verdict)
         if factor is None or factor >= 1.0:
+            continue
+        if verdict.verdict == "undecided" and verdict.pollutant in bound:
             continue
         known = worst.get(verdict.pollutant)
         if known is None or factor < (_factor(known) or 1.0):

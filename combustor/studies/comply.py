@@ -92,8 +92,13 @@ class ComplyCheck:
     ratings: Ratings
 
     @property
-    def inside(self) -> bool:
-        """Whether every limit that binds is kept: of a choice, one option at each point."""
+    def inside(self) -> bool | None:
+        """Whether every limit that binds is kept: of a choice, one option at each point.
+
+        None where no limit binds.
+        """
+        if not self.verdicts:
+            return None
         open_choices: dict[tuple[str, str], bool] = {}
         for verdict in self.verdicts:
             good = verdict.verdict == "inside"
@@ -102,7 +107,7 @@ class ComplyCheck:
                 open_choices[place] = open_choices.get(place, False) or good
             elif not good:
                 return False
-        return bool(self.verdicts) and all(open_choices.values())
+        return all(open_choices.values())
 
 
 def comply(
@@ -189,7 +194,10 @@ def _of_set(
     seen: dict[tuple[str, bool | None, str], list[str]] = {}
     for subject in subjects:
         for binding in rows_binding(rules, subject.facts):
-            place = (binding.row.row, binding.answer.holds, _why(binding))
+            binds, why = binding.answer.holds, _why(binding)
+            if binds and answer.holds is None:
+                binds, why = None, _needs(answer)
+            place = (binding.row.row, binds, why)
             seen.setdefault(place, []).append(subject.name)
             if binding.answer.holds is False:
                 continue
@@ -206,14 +214,18 @@ def _of_set(
 def _why(binding: Binding) -> str:
     answer = binding.answer
     if answer.holds is None:
-        return f"needs {', '.join(sorted(answer.missing))}"
+        return _needs(answer)
     return "" if answer.holds else "; ".join(answer.why_not)
+
+
+def _needs(answer: Answer) -> str:
+    return f"needs {', '.join(sorted(answer.missing))}"
 
 
 def _set_standing(rules: RuleSet, answer: Answer) -> Standing:
     why = "; ".join(answer.why_not)
     if answer.holds is None:
-        why = f"needs {', '.join(sorted(answer.missing))}"
+        why = _needs(answer)
     elif answer.holds and not rules.table.limits:
         why = "holds no limits: " + "; ".join(rules.table.left_out)
     return Standing(rules.name, "", (), answer.holds, why)

@@ -76,6 +76,8 @@ def facts_of(case: Case, fuel: Fuel, ratings: Ratings) -> Facts:
     values |= {"fuel": seen.fuel_class, "hydrogen_share": seen.hydrogen_share}
     if fuel.phase == "gas" and _no_bound_nitrogen(fuel):
         values.setdefault("fuel_nitrogen", 0.0)
+    if fuel.liquid is not None and fuel.liquid.nitrogen > 0.0:
+        values.setdefault("fuel_nitrogen", fuel.liquid.nitrogen)
     derived: dict[str, str] = {}
     heat_input, basis = stated.heat_input, stated.heat_input_basis
     largest = _largest_rated(case, ratings)
@@ -132,9 +134,8 @@ def fuel_sulfur(case: Case, fuel: Fuel) -> float | None:
     """Return sulfur as share of the fuel's mass: stated, or zero where it cannot hold any."""
     if case.rules.fuel_sulfur is not None:
         return case.rules.fuel_sulfur
-    own: float | None = getattr(fuel, "sulfur_mass_fraction", None)
-    if own is not None:
-        return own
+    if fuel.liquid is not None and fuel.liquid.sulfur > 0.0:
+        return fuel.liquid.sulfur
     pure = {species.upper() for species in fuel.composition} <= {"H2", "NH3", "N2"}
     return 0.0 if pure and fuel.phase == "gas" else None
 

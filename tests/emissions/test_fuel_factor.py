@@ -195,3 +195,39 @@ def test_emission_index_per_ppm(name, per_ppm):
     mass = mass_concentration(1e-6, NO2_MOLAR_MASS, US_STANDARD)
     rate = ff.per_heat(mass, factors.dry, 0.15, 0.2095) * fuel.higher_heating_value
     assert rate * 1e3 == pytest.approx(per_ppm, abs=1.5e-4)
+
+
+@pytest.mark.parametrize(
+    ("pollutant", "ratio"),
+    [("CO", 0.6088), ("SO2", 1.3925), ("UHC", 0.3487)],
+    ids=["CO over NO2", "SO2 over NO2", "CH4 over NO2"],
+)
+def test_other_pollutants_by_molar_mass(pollutant, ratio):
+    from combustor.emissions.pollutant import POLLUTANTS
+
+    found = POLLUTANTS[pollutant].molar_mass / POLLUTANTS["NOx"].molar_mass
+    assert found == pytest.approx(ratio, abs=2e-4)
+
+
+def test_emission_index_per_ppm_of_average_jet_a():
+    """13.8 % hydrogen, CH1.908: 0.0764 g/kg per ppmvd@15; heat cancels out."""
+    atoms = {"C": 1.0, "H": 1.908}
+    factors = ff.factors_of_fuel(atoms, 46e6)
+    mass = mass_concentration(1e-6, NO2_MOLAR_MASS, US_STANDARD)
+    rate = ff.per_heat(mass, factors.dry, 0.15, 0.2095) * 46e6
+    assert rate * 1e3 == pytest.approx(0.0764, abs=5.1e-5)
+
+
+@pytest.mark.parametrize(
+    ("formula", "ratio"), [("CH4", 1.11), ("H2", 1.18)], ids=["CH4, 1.11", "H2, 1.18"]
+)
+def test_higher_for_lower_heating_value_is_told_apart(formula, ratio):
+    heat = iso_heat_of(formula)
+    assert heat.higher / heat.lower == pytest.approx(ratio, abs=0.005)
+    from combustor.emissions.stack import Stack
+
+    stack = Stack({"NO": 3e-5, "O2": 0.14, "H2O": 0.07}, 50.0, 1.0, 0.0285, heat.lower, heat.higher)
+    lower, higher = (stack.express("NOx", read_unit(f"g/MJ {h}")) for h in ("LHV", "HHV"))
+    assert lower / higher == pytest.approx(ratio, abs=0.005)
+    with pytest.raises(InputError, match="leaves open which heat"):
+        stack.express("NOx", read_unit("g/MJ"))

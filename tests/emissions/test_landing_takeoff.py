@@ -62,7 +62,7 @@ def test_every_engine_is_recomputed_and_placed_by_tier():
     assert all(tier in ("caep6", "caep8") for tier in staged)
 
 
-def test_four_engines_by_hand():
+def test_five_engines_by_hand():
     """mass = 42 s x take-off + 132 s x climb + 240 s x approach + 1560 s x idle, EI x flow."""
     found = {engine["engine_id"]: level(engine) * 1e6 for engine in engines()}
     # 4AL003, 33.73 kN: 42 x 0.377 x 20.54 + 132 x 0.315 x 17.47 + 240 x 0.117 x 7.79
@@ -74,6 +74,12 @@ def test_four_engines_by_hand():
     # 6AL011, 33.05 kN: 42 x 0.3589 x 18.55 + 132 x 0.2999 x 15.81 + 240 x 0.1077 x 6.83
     #   + 1560 x 0.0449 x 3.39 = 279.62 + 625.87 + 176.54 + 237.45 = 1319.48 g; / 33.05 = 39.92
     assert found["6AL011"] == pytest.approx(39.92, abs=0.005)
+    # 2CM016, 133.45 kN, staged: 42 x 1.345 x 27.75 + 132 x 1.104 x 14.91 + 240 x 0.369 x 7.02
+    #   + 1560 x 0.129 x 4.73 = 1567.60 + 2172.80 + 621.69 + 951.87 = 5313.96 g; / 133.45 = 39.82
+    assert found["2CM016"] == pytest.approx(39.82, abs=0.005)
+    # 5GE085, 304.8 kN: 42 x 2.989 x 45.63 + 132 x 2.387 x 31.74 + 240 x 0.755 x 10.29
+    #   + 1560 x 0.227 x 4.69 = 5728.30 + 10000.77 + 1864.55 + 1660.82 = 19254.44 g; / 304.8 = 63.17
+    assert found["5GE085"] == pytest.approx(63.17, abs=0.005)
 
 
 @pytest.mark.parametrize("ratio", [20.0, 30.0, 40.0])

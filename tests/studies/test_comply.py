@@ -143,6 +143,13 @@ def test_without_names_every_shipped_set_is_looked_at(ratings):
     assert whole["de-13-bimschv"].binds is False and "50 MW" in whole["de-13-bimschv"].why
 
 
+def test_where_no_limit_binds_there_is_no_verdict(ratings):
+    check = comply(case_of(f'names = ["icao-annex-16"]\n{FULL_FACTS}'), ratings=ratings)
+    assert check.verdicts == () and check.inside is None
+    (standing,) = check.standings
+    assert standing.binds is False and "mechanical-drive" in standing.why
+
+
 def test_a_set_past_its_review_is_flagged(demo, ratings):
     assert comply(demo, ratings=ratings, today=date(2030, 1, 1)).overdue == ("ostrelle_waterworks",)
 
