@@ -41,6 +41,7 @@ class AirBudget:
     """Shares of all air, by role; they sum to one.
 
     ``spare`` is what a lean front end had left over for film or dilution; it is in one of them.
+    ``film_asked`` is what the wall asks for.
     """
 
     swirler: float
@@ -52,6 +53,7 @@ class AirBudget:
     leak: float
     premixer: float = 0.0
     spare: float = 0.0
+    film_asked: float = 0.0
 
     @property
     def front(self) -> float:

@@ -177,7 +177,7 @@ def _zones(task: Task, state: State, rounded: Rounded) -> Iterator[Dimension]:
     if task.burnout is not None:
         by_rule = BURNOUT
         note += (
-            f"; CO from {1e6 * task.burnout.at_flame:.0f} to {1e6 * task.burnout.wanted:.0f} ppm "
+            f"; CO from {1e6 * task.burnout.at_flame:.0f} to {1e6 * task.burnout.reached:.0f} ppm "
             f"in {1e3 * task.burnout.time:.1f} ms"
         )
         usual = zones.SECONDARY_LENGTH_RATIO * height

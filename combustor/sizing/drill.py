@@ -7,12 +7,12 @@ from combustor.base.method import Method
 DRILL_STEPS = Method(
     key="drill-steps",
     quantity="diameters of holes",
-    source="preferred drill sizes of the metric twist-drill series: 0.1 mm steps to 14 mm, "
-    "0.25 mm to 32 mm, 0.5 mm to 50 mm, 1 mm above",
+    source="preferred drill sizes of the metric twist-drill series: 0.05 mm steps to 3 mm, "
+    "0.1 mm to 14 mm, 0.25 mm to 32 mm, 0.5 mm to 50 mm, 1 mm above",
     reading="from memory",
 )
 
-_STEPS = ((14.0, 0.1), (32.0, 0.25), (50.0, 0.5))
+_STEPS = ((3.0, 0.05), (14.0, 0.1), (32.0, 0.25), (50.0, 0.5))
 _LARGEST_STEP = 1.0
 SMALLEST_DRILL = 0.5e-3
 

@@ -17,6 +17,7 @@ from combustor.sizing import (
     swirler,
     zones,
 )
+from combustor.sizing.burnout import BURNOUT
 from combustor.sizing.casing import (
     ATMOSPHERE,
     HEAT_RELEASE,
@@ -25,6 +26,7 @@ from combustor.sizing.casing import (
 )
 from combustor.sizing.dimensions import annulus_velocity, premixer_velocity
 from combustor.sizing.exit_pattern import pattern_factor_of
+from combustor.sizing.held_back import FILM_HELD_BACK
 from combustor.sizing.reference_area import (
     CHEMICAL_LOADING,
     RELIGHT_LOADING,
@@ -73,6 +75,7 @@ def findings_of(task: Task, state: State, rounded: Rounded) -> tuple[Finding, ..
         _jets(task, state, rounded),
         _swirler(rounded),
         _front_end(task, state, rounded),
+        _held_back(task, state),
         _liner(task, rounded),
         _water(task),
     )
@@ -347,6 +350,32 @@ def _swirler(rounded: Rounded) -> Iterator[Finding]:
     )
     for notice in notices:
         yield Finding("watch", f"swirler {notice.quantity}", notice.value, advice=str(notice))
+
+
+def _held_back(task: Task, state: State) -> Iterator[Finding]:
+    budget, burnout = state.budget, task.burnout
+    if budget.film_asked > budget.film + 1e-4:
+        yield Finding(
+            "act",
+            "film air, held back by the air budget",
+            100.0 * budget.film,
+            100.0 * budget.film_asked,
+            "%",
+            "the wall will run hotter than its target: raise the zone equivalence ratios or "
+            "wall_temperature, add a coating, or lower exit_temperature",
+            FILM_HELD_BACK.citation,
+        )
+    if burnout is not None and burnout.reached > burnout.wanted:
+        yield Finding(
+            "act",
+            "CO at the end of burn-out",
+            1e6 * burnout.reached,
+            1e6 * burnout.wanted,
+            "ppm",
+            "the flame holds more CO at equilibrium: lower equivalence_ratio.primary, or allow "
+            "more CO (cooling by film and dilution air burns some of it)",
+            BURNOUT.citation,
+        )
 
 
 def _front_end(task: Task, state: State, rounded: Rounded) -> Iterator[Finding]:

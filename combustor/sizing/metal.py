@@ -38,6 +38,7 @@ from combustor.sizing.sketch import (
 # wall between pilot and premixer, over the pilot's tip diameter
 PILOT_WALL = 1.10
 CROSS_FIRE_TUBES = 2
+SMALL_PACK = 40e-3
 CROSS_FIRE_STATION = 0.6
 
 
@@ -117,7 +118,7 @@ def has_cross_fire(sketch: Sketch) -> bool:
 
 
 def vane_pack_of(pack: VanePack, area: float, drilled: bool) -> Swirler:
-    """Return the vane pack whose passage has an area [m2], to 0.1 mm when drilled."""
+    """Return the vane pack whose passage has an area [m2], to 0.1 or 0.01 mm when drilled."""
     if pack.hub_diameter is None:
         tip = vanes.tip_diameter(area, pack.count, pack.thickness, pack.hub_ratio)
         hub = pack.hub_ratio * tip
@@ -128,7 +129,8 @@ def vane_pack_of(pack: VanePack, area: float, drilled: bool) -> Swirler:
         hub = round(hub, 4)
         tip = vanes.tip_diameter_on_hub(area, pack.count, pack.thickness, hub)
     if drilled:
-        tip = round(tip, 4)
+        # a tenth of a millimetre is a percent of the area of a small pack
+        tip = round(tip, 4 if tip > SMALL_PACK else 5)
     return Swirler(hub, tip, pack.angle, pack.count, pack.thickness, pack.loss)
 
 

@@ -20,6 +20,7 @@ from combustor.sizing.draft import band, draw_sketch, placed, plans_for
 from combustor.sizing.exit_pattern import liner_drop
 from combustor.sizing.frame import LossShares, frame_of
 from combustor.sizing.front_ends import lean_budget, rich_budget
+from combustor.sizing.held_back import with_less_film
 from combustor.sizing.loop import Aim, Fit, first_areas, fit_areas
 from combustor.sizing.profile import LinerProfile
 from combustor.sizing.rows import RowConditions, RowPlan, plan_row
@@ -163,10 +164,16 @@ def _budget(
         swirler=targets.swirler_air,
         dome=targets.dome_air,
     )
+    if targets.film_air is not None:
+        return _budget_for(task, sketch, demand)
+    return with_less_film(demand, lambda asked: _budget_for(task, sketch, asked))
+
+
+def _budget_for(task: Task, sketch: Sketch, demand: BudgetDemand) -> AirBudget:
     if task.front_end == "rich-lean":
         return rich_budget(demand)
     if task.front_end == "lean-premixed":
-        return lean_budget(demand, targets.pilot_fuel, bool(sketch.rows))
+        return lean_budget(demand, task.case.targets.pilot_fuel, bool(sketch.rows))
     return budget(demand)
 
 

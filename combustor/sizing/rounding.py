@@ -21,7 +21,7 @@ from combustor.sizing.state import State, Task
 ZONE_TOLERANCE = 0.03
 LOSS_TOLERANCE = 1e-3
 _GOOD = 0.3
-_ROUNDS = 6
+_ROUNDS = 10
 
 
 @dataclass(frozen=True)
@@ -129,5 +129,8 @@ def _moves(
     front = [SWIRLER] if sketch.premixing is None else [PREMIXER]
     groups = (front, [DOME], [name for ring in sketch.slots for name in sketch.names(ring.name)])
     for group in groups:
-        for scale in (0.99, 1.01):
+        # a hundredth, or one hole of the row with the fewest where that is more
+        fewest = min(hardware.opening(name).count for name in group)
+        step = 0.01 if group == front else max(0.01, 1.0 / fewest)
+        for scale in (1.0 - step, 1.0 + step):
             yield {**areas, **{name: scale * areas[name] for name in group}}

@@ -16,10 +16,10 @@ from combustor.hardware.metal import Layout
 CAN_CLEARANCE = Method(
     key="can-clearance",
     quantity="gap between neighbouring cans, and between can and casing ring",
-    source="5 % of the liner diameter, 5 mm at least, so that air reaches all sides",
+    source="5 % of the liner diameter, 2 mm at least, so that air reaches all sides",
     reading="judgement",
 )
-CLEARANCE_SHARE, LEAST_CLEARANCE = 0.05, 5e-3
+CLEARANCE_SHARE, LEAST_CLEARANCE = 0.05, 2e-3
 
 
 @dataclass(frozen=True)

@@ -90,7 +90,7 @@ def test_a_stated_count_is_kept():
 
 @pytest.mark.parametrize(
     ("diameter", "step"),
-    [(3e-3, 0.1e-3), (13.9e-3, 0.1e-3), (20e-3, 0.25e-3), (45e-3, 0.5e-3), (60e-3, 1e-3)],
+    [(2.5e-3, 0.05e-3), (13.9e-3, 0.1e-3), (20e-3, 0.25e-3), (45e-3, 0.5e-3), (60e-3, 1e-3)],
     ids=lambda value: f"metric-drill-series-from-memory-{1e3 * value:g}",
 )
 def test_drill_steps(diameter, step):

@@ -261,7 +261,7 @@ liner_area_ratio = 0.62
         ('casing_diameter = "440 mm"', 'casing_diameter = "350 mm"', "no area inside the envelope"),
         ('casing_length = "1150 mm"', 'casing_length = "900 mm"', "the liner does not fit"),
         ('exit_temperature = "1000 degC"', 'exit_temperature = "2250 degC"', "at most"),
-        ('exit_temperature = "1000 degC"', 'exit_temperature = "1500 degC"', "spoken for"),
+        ('exit_temperature = "1000 degC"', 'exit_temperature = "1650 degC"', "over 100 %"),
         ("secondary = 0.60", "secondary = 0.9", "secondary row"),
         (
             'inlet_pressure = "3.0 bar"',
@@ -277,6 +277,20 @@ def test_impossible_targets_explain_the_chain(old, new, said, fuel, gas, make_ca
     assert len(caught.value.chain) >= 2
     assert caught.value.advice
     assert caught.value.exit_code == 1
+
+
+def test_film_air_gives_way_before_the_flame_does(fuel, gas, make_can):
+    """Hot exit: the wall asks for more film than the budget has; said as a broken limit."""
+    case = make_can(
+        ('exit_temperature = "1000 degC"', 'exit_temperature = "1500 degC"'),
+        ('casing_length = "1150 mm"', 'casing_length = "1500 mm"'),
+    )
+    design = size(case, fuel, gas)
+    assert design.converged
+    (held,) = [finding for finding in design.findings if "held back" in finding.what]
+    assert held.level == "act" and held.value < held.limit
+    share = design.split.flow("film") / case.design_point.air_flow
+    assert 100.0 * share == pytest.approx(held.value, abs=0.5)
 
 
 def test_a_diffuser_that_takes_the_loss_is_refused(fuel, gas, make_can):
