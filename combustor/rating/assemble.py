@@ -22,7 +22,7 @@ from combustor.rating.balance import balances_of
 from combustor.rating.couple import Coupled
 from combustor.rating.fire import Fire, layout_of
 from combustor.rating.injectors import INJECTOR_AIR, PREMIXED_UNMIXEDNESS, injectors_of, is_premixed
-from combustor.rating.near_wall import film_shares
+from combustor.rating.near_wall import film_shares, quenched_of
 from combustor.rating.operating import Operating
 from combustor.rating.record import (
     ExitRecord,
@@ -83,7 +83,11 @@ def rated(
         exit=exit_of(operating, hardware, coupled, emissions),
         walls=tuple(point for wall in coupled.walls for point in wall_points(wall)),
         emissions=emissions,
-        operability={"blowout_fuel_air_ratio": None, "blowout_margin_percent": None},
+        operability={
+            "blowout_fuel_air_ratio": None,
+            "blowout_margin_percent": None,
+            **wall_quench_of(gas, hardware, fire, emissions),
+        },
         balances=balances_of(gas, operating, coupled),
         methods=methods_of(hardware, fuel, coupled),
         convergence=coupled.convergence,
@@ -98,6 +102,20 @@ def rated(
             settings,
         ),
     )
+
+
+def wall_quench_of(
+    gas: Gas, hardware: Hardware, fire: Fire, emissions: Emissions
+) -> dict[str, float | None]:
+    """Return how much of the carbon monoxide stems from quenching beside the wall."""
+    quench = quenched_of(gas, hardware, fire.chain, fire.beside)
+    made = emissions.co_dry_15
+    if quench is None:
+        return {}
+    return {
+        "co_beside_wall_percent": 100.0 * quench.share,
+        "co_quenched_at_wall_ppmvd_15": None if made is None else 1e6 * quench.quenched * made,
+    }
 
 
 def inlet_of(operating: Operating) -> InletRecord:

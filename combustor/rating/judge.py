@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 
 from combustor.base.finding import Finding, Level
 from combustor.base.method import Method, Notice
@@ -10,6 +10,7 @@ from combustor.case.schema import Case, Point
 from combustor.fuel.choose_mechanism import method_of
 from combustor.fuel.record import Fuel
 from combustor.hardware.zone_air import FRONT_ROLES
+from combustor.kinetics.near_wall import NEAR_WALL
 from combustor.rating.couple import Coupled
 from combustor.rating.record import PointRating
 from combustor.rating.settings import RECIRCULATION, UNMIXEDNESS, Settings
@@ -23,6 +24,8 @@ PATTERN_SLACK = 0.02
 EFFICIENCY = {"rated": 0.995, "part": 0.99, "idle": 0.98, "relight": 0.8}
 EMISSION_MARGIN = 0.85
 ANNULUS_MACH = 0.10
+LEAST_QUENCH = 1.0  # ppm of CO
+QUENCH_SHARE = 0.25  # of all CO, above which the films decide it
 RICH_FROM = 1.2
 RICH_CHEMISTRY = Method(
     key="rich-nitrogen-chemistry",
@@ -47,11 +50,17 @@ def findings_of(
         *_efficiency(point, rated),
         *_emissions(case, rated),
         *_jets(rated),
+        *_wall_quench(rated),
         *_annulus(rated, coupled),
         *_rich_chemistry(rated, fuel),
         *_measured_openings(case),
         *_notices(rated, coupled, fuel, settings),
     ]
+    return gravest_first(found)
+
+
+def gravest_first(found: Iterable[Finding]) -> tuple[Finding, ...]:
+    """Return findings sorted by level, in their own order within one."""
     order = {"act": 0, "watch": 1, "ok": 2}
     return tuple(sorted(found, key=lambda finding: order[finding.level]))
 
@@ -191,6 +200,25 @@ def _jets(rated: PointRating) -> Iterator[Finding]:
             advice,
             PRACTICE,
         )
+
+
+def _wall_quench(rated: PointRating) -> Iterator[Finding]:
+    """Judge the carbon monoxide that film air keeps from burning, where it counts."""
+    share = rated.operability.get("co_beside_wall_percent")
+    quenched = rated.operability.get("co_quenched_at_wall_ppmvd_15")
+    made = None if rated.emissions is None else rated.emissions.co_dry_15
+    if share is None or quenched is None or made is None or quenched < LEAST_QUENCH:
+        return
+    yield Finding(
+        "watch" if quenched > QUENCH_SHARE * 1e6 * made else "ok",
+        "CO from quenching at the wall",
+        quenched,
+        QUENCH_SHARE * 1e6 * made,
+        "ppm",
+        f"{share:.0f} % of the CO leaves the liner beside the wall: less film air upstream, or a "
+        "hotter wall, burns more of it.",
+        NEAR_WALL.citation,
+    )
 
 
 def _annulus(rated: PointRating, coupled: Coupled) -> Iterator[Finding]:

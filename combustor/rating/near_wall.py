@@ -12,15 +12,19 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from combustor.fuel.gas import Gas
 from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.hardware.zone_air import FILM_ROLES, mixed_share
 from combustor.heat.wall import WallMarch
 from combustor.kinetics.near_wall import WallExchange
+from combustor.kinetics.record import Chain
 from combustor.kinetics.streams import Stream
 from combustor.rating.entry import Entry, Stretch
 
-# A stream that would have to take in more than this share of the core in one cell is mixed in it.
+# Beyond these, what has to be taken in within one cell, over the core's flow and over the
+# stream's own, leaves no stream to speak of: it joins the core there.
 MOST_OF_THE_CORE = 0.5
+MOST_OF_ITSELF = 3.0
 
 
 @dataclass(frozen=True)
@@ -37,6 +41,22 @@ class Beside:
 
     exchanges: tuple[WallExchange, ...]
     film_left: tuple[float, ...]
+
+
+@dataclass(frozen=True)
+class WallQuench:
+    """Carbon monoxide beside the wall where the liner ends, over all that leaves the liner.
+
+    Parameters
+    ----------
+    share : float
+        What flows beside the wall [-]
+    quenched : float
+        Of that, what would not be there had the gas taken in burnt as the core did [-]
+    """
+
+    share: float
+    quenched: float
 
 
 def film_shares(walls: Sequence[WallMarch]) -> dict[str, AxialProfile]:
@@ -95,7 +115,7 @@ def beside_of(
         taken = flow * (unmixed / left - 1.0) if left > 0.0 else np.inf
         if flow == 0.0:
             exchanges.append(WallExchange())
-        elif taken > MOST_OF_THE_CORE * (core_flow[place] + joined):
+        elif taken > min(MOST_OF_THE_CORE * (core_flow[place] + joined), MOST_OF_ITSELF * flow):
             exchanges.append(WallExchange(air, joins=True))
             joined += flow
             flow = left = 0.0
@@ -106,6 +126,27 @@ def beside_of(
         unmixed = left
         left_over.append(left)
     return Beside(tuple(exchanges), tuple(left_over))
+
+
+def quenched_of(gas: Gas, hardware: Hardware, chain: Chain, beside: Beside) -> WallQuench | None:
+    """Return how much of the carbon monoxide leaving the liner stems from the wall.
+
+    None where nothing flows beside the wall there, or the mechanism knows no carbon monoxide.
+    """
+    end = hardware.liner_length * (1.0 + 1e-9)
+    places = [place for place, station in enumerate(chain.stations) if station.end <= end]
+    last = chain.stations[places[-1]]
+    wall = last.beside
+    if wall is None or not gas.has("CO"):
+        return None
+    index = gas.index("CO")
+    leaving = last.mass_flow * float(last.mass_fractions[index])
+    if leaving <= 0.0:
+        return None
+    own_air = beside.film_left[places[-1] - 1]
+    at_wall = wall.mass_flow * float(wall.mass_fractions[index])
+    burnt = (wall.mass_flow - own_air) * float(last.core.mass_fractions[index])
+    return WallQuench(at_wall / leaving, (at_wall - burnt) / leaving)
 
 
 def core_only(beside: Beside) -> tuple[float, ...]:
