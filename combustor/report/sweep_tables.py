@@ -276,6 +276,14 @@ def _remarks(sweep: Sweep) -> list[Block]:
                 "sweep a case that `combustor size -o` has completed."
             )
         ]
+    targets = [axis.key for axis in plan.axes if axis.key.startswith("targets.")]
+    if targets:
+        return [
+            Prose(
+                f"The case holds its metal, which stays as it is: {targets[0]} moves what is "
+                "judged, not what is built. Without [hardware] it would be sized anew."
+            )
+        ]
     owners = {
         entry.path[1] if entry.path[0] == "points" else None
         for a in plan.axes

@@ -265,3 +265,15 @@ def test_progress_goes_to_a_terminal_on_stderr_and_nowhere_else(folder, hole):
     json.loads(out)
     assert b"5 of 5 ratings" in drawn and b"left" in drawn
     assert b"\n" not in drawn.strip()
+
+
+def test_a_target_on_given_metal_says_that_the_metal_stays(capsys):
+    arguments = ["sweep", "sized.toml", "--vary", "targets.wall_temperature=1000:1200:2"]
+    main([*arguments, "--point", "full", "--workers", "1", "--json"])
+    points = json.loads(capsys.readouterr().out)["points"]
+    cool, hot = ([line["percent"] for line in point["split"]] for point in points)
+    assert cool == pytest.approx(hot, abs=1e-4)
+    limits = [f["limit"] for p in points for f in p["findings"] if "wall temp" in f["what"]]
+    assert limits == [1000.0, 1200.0]
+    main([*arguments, "--point", "full", "--workers", "1"])
+    assert "targets.wall_temperature moves what is judged" in capsys.readouterr().out

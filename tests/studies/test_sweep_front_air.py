@@ -4,7 +4,6 @@ from math import exp, log, sqrt
 
 import pytest
 
-from combustor.case import loads_case
 from combustor.studies.sweep import sweep
 from combustor.studies.sweep_axis import spaced
 
@@ -25,10 +24,11 @@ NEAR_STOICHIOMETRIC = (8.0, 600.0, 0.90, -5.7, 5.5)
     ],
 )
 def test_one_percent_of_front_air_moves_nox(
-    metal_text, pressure, temperature, wanted, more_air, less_air
+    metal_case, diameter, pressure, temperature, wanted, more_air, less_air
 ):
-    case = _ideally_mixed(metal_text, pressure, temperature, wanted)
-    found = sweep(case, [spaced(case, DILUTION, "46 mm", "47 mm", 3)], ["full"], workers=1)
+    case = _ideally_mixed(metal_case, diameter, pressure, temperature, wanted)
+    around = [spaced(case, DILUTION, 0.99 * diameter, 1.01 * diameter, 3)]
+    found = sweep(case, around, ["full"], workers=1)
     first, middle, last = (result.outcome for _, result in found.grid)
     assert middle.primary_equivalence_ratio == pytest.approx(wanted, abs=0.002)
     slope = log(last.nox / first.nox) / log(last.primary_air / first.primary_air)
@@ -39,10 +39,9 @@ def test_one_percent_of_front_air_moves_nox(
     assert line.relative["nox"] / line.relative["primary_air"] == pytest.approx(slope, rel=0.05)
 
 
-def _ideally_mixed(metal_text, pressure, temperature, wanted):
+def _ideally_mixed(case, diameter, pressure, temperature, wanted):
     """The demo metal at its own corrected flow, one stream, the fuel flow held."""
     flow = 14.2 * pressure / 9.9 * sqrt(598.15 / temperature)
-    case = loads_case(metal_text)
     stated = {
         "air_flow": flow,
         "inlet_pressure": pressure * 1e5,
@@ -56,6 +55,6 @@ def _ideally_mixed(metal_text, pressure, temperature, wanted):
     for _ in range(3):
         point = case.point("full").model_copy(update=stated)
         case = case.model_copy(update={"points": (point,)})
-        here = sweep(case, [spaced(case, DILUTION, 0.0465, 0.0465, 1)], workers=1)
+        here = sweep(case, [spaced(case, DILUTION, diameter, diameter, 1)], workers=1)
         stated["fuel_flow"] *= wanted / here.outcomes["0", "full"].primary_equivalence_ratio
     return case

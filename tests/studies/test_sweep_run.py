@@ -209,10 +209,10 @@ def test_a_point_that_fails_is_a_row_with_its_reason(metal_case):
 def test_a_case_without_metal_is_sized_anew_in_every_row(metal_text):
     bare = loads_case(metal_text.split("# The metal")[0] + "[model]\nstreams = 2\ncells = 1\n")
     assert bare.hardware is None
-    key = "targets.equivalence_ratio.primary"
-    axes = [spaced(bare, key, 0.85, 0.95, 2)]
-    one = sweep(bare, axes, ["full", "p80"], workers=1)
-    two = sweep(bare, axes, ["full", "p80"], workers=2)
+    axes = [spaced(bare, "targets.equivalence_ratio.primary", 0.85, 0.95, 2)]
+    laid = plan(bare, axes, ["full", "p80"], sensitivities=False)
+    one = carried_out(laid, workers=1)
+    two = carried_out(laid, workers=2)
     assert one.results == two.results
     reached = [one.outcomes[str(i), "full"].primary_equivalence_ratio for i in range(2)]
     assert reached == pytest.approx([0.85, 0.95], abs=0.03)
@@ -221,7 +221,7 @@ def test_a_case_without_metal_is_sized_anew_in_every_row(metal_text):
 def test_a_row_that_cannot_be_sized_says_why(metal_text):
     bare = loads_case(metal_text.split("# The metal")[0] + "[model]\nstreams = 2\ncells = 1\n")
     axes = [spaced(bare, "combustor.casing_diameter", "150 mm", "440 mm", 2)]
-    found = sweep(bare, axes, ["full"], workers=1)
+    found = carried_out(plan(bare, axes, ["full"], sensitivities=False), workers=1)
     small, large = (r.outcome for _, r in found.grid)
     assert large.burning
     assert small.status == "not_converged" and "sizing" in small.reason
