@@ -74,6 +74,8 @@ class ComplyCheck:
         Of the fuel.
     burnt : Fuel
     ratings : Ratings
+    leaning_on : tuple of str
+        Facts taken from the case, not stated, by which a named set or row was left out.
     """
 
     title: str
@@ -90,13 +92,16 @@ class ComplyCheck:
     cautions: tuple[str, ...]
     burnt: Fuel
     ratings: Ratings
+    leaning_on: tuple[str, ...] = ()
 
     @property
     def inside(self) -> bool | None:
         """Whether every limit that binds is kept: of a choice, one option at each point.
 
-        None where no limit binds.
+        None where no limit binds; False where that rests on a fact nobody stated.
         """
+        if self.leaning_on:
+            return False
         if not self.verdicts:
             return None
         open_choices: dict[tuple[str, str], bool] = {}
@@ -151,19 +156,23 @@ def comply(
     own = case.rules.scatter.model_dump(exclude_none=True)
     verdicts: list[Verdict] = []
     standings: list[Standing] = []
+    leaning: set[str] = set()
     for rule_set in sets:
         answer = set_binds(rule_set, facts)
         if answer.holds is False or (answer.holds is None and not named):
             standings.append(_set_standing(rule_set, answer))
             if answer.holds is None:
                 verdicts.append(_undecided_set(rule_set, answer))
+            elif named:
+                leaning |= answer.used & facts.derived.keys()
             continue
         standings.append(_set_standing(rule_set, answer))
         by_cycle = any(row.emission_unit.kind == "thrust" for row in rule_set.table.limits)
         judged = [cycle] if by_cycle else subjects
-        made, places = _of_set(rule_set, answer, judged, confirmed, own)
+        made, places, by_derived = _of_set(rule_set, answer, judged, confirmed, own)
         verdicts += made
         standings += places
+        leaning |= by_derived
     day = today or date.today()
     return ComplyCheck(
         title=case.title,
@@ -176,10 +185,11 @@ def comply(
         rules=sets,
         facts=facts,
         overdue=tuple(s.name for s in sets if s.table.review < day),
-        notes=_notes(case, facts, fuel),
+        notes=_notes(case, facts, fuel, leaning),
         cautions=fuel.cautions,
         burnt=fuel,
         ratings=found,
+        leaning_on=tuple(sorted(leaning)),
     )
 
 
@@ -189,8 +199,9 @@ def _of_set(
     subjects: Iterable[Subject],
     confirmed: frozenset[str],
     scatter: Mapping[str, float],
-) -> tuple[list[Verdict], list[Standing]]:
+) -> tuple[list[Verdict], list[Standing], set[str]]:
     verdicts = []
+    leaning: set[str] = set()
     seen: dict[tuple[str, bool | None, str], list[str]] = {}
     for subject in subjects:
         for binding in rows_binding(rules, subject.facts):
@@ -200,6 +211,7 @@ def _of_set(
             place = (binding.row.row, binds, why)
             seen.setdefault(place, []).append(subject.name)
             if binding.answer.holds is False:
+                leaning |= binding.answer.used & subject.facts.derived.keys()
                 continue
             verdicts.append(
                 verdict_on(rules, binding, subject, confirmed, scatter, answer.missing, answer.used)
@@ -208,7 +220,7 @@ def _of_set(
         Standing(rules.name, row, tuple(points), binds, why)
         for (row, binds, why), points in seen.items()
     ]
-    return verdicts, standings
+    return verdicts, standings, leaning
 
 
 def _why(binding: Binding) -> str:
@@ -393,8 +405,11 @@ def _modes(case: Case, ratings: Ratings) -> dict[str, str]:
     return modes
 
 
-def _notes(case: Case, facts: Facts, fuel: Fuel) -> tuple[str, ...]:
+def _notes(case: Case, facts: Facts, fuel: Fuel, leaning: set[str]) -> tuple[str, ...]:
     found = [f"{name.replace('_', ' ')} taken as {told}" for name, told in facts.derived.items()]
+    if leaning:
+        names = ", ".join(sorted(leaning))
+        found.append(f"limits were left out on what was taken so: state {names} in [rules]")
     heat = facts.derived.get("heat_input")
     if heat is None and facts.heat_input is not None and facts.heat_input_basis is None:
         found.append("heat input is stated without heat_input_basis, LHV or HHV")

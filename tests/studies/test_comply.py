@@ -150,6 +150,16 @@ def test_where_no_limit_binds_there_is_no_verdict(ratings):
     assert standing.binds is False and "mechanical-drive" in standing.why
 
 
+def test_a_set_left_out_on_a_derived_fact_is_no_pass(ratings):
+    large = 'names = ["eu-2010-75-annex-v"]\nuse = "electric"\n'
+    check = comply(case_of(large), ratings=ratings)
+    assert check.verdicts == () and check.leaning_on == ("heat_input",)
+    assert check.inside is False
+    assert any("state heat_input" in note for note in check.notes)
+    stated = comply(case_of(f'{large}heat_input = "13 MW"'), ratings=ratings)
+    assert stated.inside is None and stated.leaning_on == ()
+
+
 def test_a_set_past_its_review_is_flagged(demo, ratings):
     assert comply(demo, ratings=ratings, today=date(2030, 1, 1)).overdue == ("ostrelle_waterworks",)
 
