@@ -13,6 +13,7 @@ from combustor.kinetics.branch import hold
 from combustor.kinetics.continuation import descend, follow
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
 from combustor.kinetics.stirred import stirred_zone
+from combustor.kinetics.unmixedness import Distribution
 from combustor.kinetics.zone import Zone, ZoneState
 
 Array = NDArray[np.float64]
@@ -32,6 +33,7 @@ FINEST_RESIDENCE_RATIO = 0.998
 BOLDEST_FUEL_RATIO = 0.9
 FINEST_FUEL_RATIO = 0.99
 LEAST_FUEL_SHARE = 0.01  # of the operating fuel flow: where a search for blow-out stops
+RICHEST_FUEL_RATIO = 12.0  # of the operating fuel flow: where a search for rich blow-out stops
 
 
 @dataclass(frozen=True, eq=False)
@@ -98,7 +100,7 @@ class FuelBlowout:
     Parameters
     ----------
     fuel_flow : float
-        The least found to burn, within 1 % of blow-out [kg/s]
+        The least found to burn, within 1 % of blow-out unless asked otherwise [kg/s]
     reached : bool
         False where the zone still burnt with the least fuel tried, 1 % of what was given.
     iterations : int
@@ -116,6 +118,8 @@ def blowout_fuel_flow(
     primary: PrimaryZone,
     heat_loss: float = 0.0,
     warm: ZoneState | None = None,
+    boldest: float = BOLDEST_FUEL_RATIO,
+    finest: float = FINEST_FUEL_RATIO,
 ) -> FuelBlowout | None:
     """Reduce the fuel of a burning primary zone until it blows out.
 
@@ -130,6 +134,8 @@ def blowout_fuel_flow(
         At the operating fuel flow; falls with it [W]
     warm : ZoneState, optional
         Its solution, to save time.
+    boldest, finest : float
+        Fuel of one step over that of the step before, at the start and where the branch ends.
 
     Returns
     -------
@@ -138,19 +144,66 @@ def blowout_fuel_flow(
     """
 
     def zone_at(share: float) -> Zone:
-        fuel = replace(primary.fuel, mass_flow=primary.fuel.mass_flow * share)
-        leaner = replace(primary, fuel=fuel)
+        leaner = with_fuel(primary, share)
         fresh = fresh_bundle(gas, leaner, distribution_of(leaner))
         return primary_zone(gas, pressure, leaner, fresh, heat_loss * share)
 
     operating = hold(zone_at(1.0), warm)
     if operating.status != "burning":
         return None
-    followed = descend(
-        zone_at, operating.state, 1.0, LEAST_FUEL_SHARE, BOLDEST_FUEL_RATIO, FINEST_FUEL_RATIO
-    )
+    followed = descend(zone_at, operating.state, 1.0, LEAST_FUEL_SHARE, boldest, finest)
     return FuelBlowout(
         fuel_flow=primary.fuel.mass_flow * followed.factor,
         reached=followed.factor > LEAST_FUEL_SHARE,
         iterations=operating.iterations + followed.iterations,
     )
+
+
+def rich_blowout_fuel_flow(
+    gas: Gas, pressure: float, primary: PrimaryZone, heat_loss: float = 0.0
+) -> FuelBlowout | None:
+    """Raise the fuel of a primary zone, taken as perfectly mixed, until it blows out.
+
+    Parameters
+    ----------
+    gas, pressure, primary, heat_loss
+        As for :func:`blowout_fuel_flow`.
+
+    Returns
+    -------
+    FuelBlowout or None
+        The most fuel found to burn, within 1 %; not ``reached`` where twelve times the
+        operating fuel still burns. None where the mixed zone does not burn with the fuel given.
+    """
+    mixed = replace(primary, unmixedness=0.0, distribution=None)
+
+    def zone_at(inverse: float) -> Zone:
+        richer = with_fuel(mixed, 1.0 / inverse)
+        fresh = fresh_bundle(gas, richer, distribution_of(richer))
+        return primary_zone(gas, pressure, richer, fresh, heat_loss)
+
+    operating = hold(zone_at(1.0), None)
+    if operating.status != "burning":
+        return None
+    least = 1.0 / RICHEST_FUEL_RATIO
+    followed = descend(zone_at, operating.state, 1.0, least, BOLDEST_FUEL_RATIO, FINEST_FUEL_RATIO)
+    return FuelBlowout(
+        fuel_flow=primary.fuel.mass_flow / followed.factor,
+        reached=followed.factor > least,
+        iterations=operating.iterations + followed.iterations,
+    )
+
+
+def with_fuel(primary: PrimaryZone, share: float) -> PrimaryZone:
+    """Return the primary zone with its fuel multiplied by a share.
+
+    Streams as several injectors make them each keep their air and lose the same share of fuel.
+    """
+    fuel = replace(primary.fuel, mass_flow=primary.fuel.mass_flow * share)
+    streams = primary.distribution
+    if streams is None:
+        return replace(primary, fuel=fuel)
+    left = 1.0 + (share - 1.0) * streams.mixture_fractions
+    shares = streams.shares * left
+    leaner = Distribution(streams.mixture_fractions * share / left, shares / shares.sum())
+    return replace(primary, fuel=fuel, distribution=leaner)

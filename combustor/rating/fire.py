@@ -109,18 +109,7 @@ def light(
     if mixing is None:
         mixing = mixing_rate(split, hardware.liner_height)
     inflows = [_air(operating, flow) for flow in split.openings]
-    injectors = injectors_of(operating, hardware, split, layout.entries, fuel_flow, settings)
-    mixture = streams_of(injectors, fuel_flow, operating.water_flow, settings.streams)
-    primary = PrimaryZone(
-        fuel=_injected(operating, fuel_flow),
-        air=_joined(operating, inflows, [entry.primary for entry in layout.entries]),
-        volume=layout.primary_volume,
-        unmixedness=mixture.unmixedness if mixture else width_of(injectors, settings),
-        recirculation=settings.recirculation,
-        streams=settings.streams,
-        end=layout.primary_end,
-        distribution=mixture,
-    )
+    primary = primary_of(operating, hardware, layout, split, fuel_flow, settings)
     side = [
         _joined(operating, inflows, [entry.stretches[place] for entry in layout.entries])
         for place in range(len(layout.stretches))
@@ -141,6 +130,30 @@ def light(
     mixed = None if chain.exit is None else _mixed(gas, chain, last)
     exit_flow = operating.inlet.mass_flow + fuel_flow + operating.water_flow
     return Fire(chain, mixed, fuel_flow, exit_flow, mixing, beside)
+
+
+def primary_of(
+    operating: Operating,
+    hardware: Hardware,
+    layout: Layout,
+    split: AirSplit,
+    fuel_flow: float,
+    settings: Settings,
+) -> PrimaryZone:
+    """Return where fuel meets air, as the air splits."""
+    inflows = [_air(operating, flow) for flow in split.openings]
+    injectors = injectors_of(operating, hardware, split, layout.entries, fuel_flow, settings)
+    mixture = streams_of(injectors, fuel_flow, operating.water_flow, settings.streams)
+    return PrimaryZone(
+        fuel=_injected(operating, fuel_flow),
+        air=_joined(operating, inflows, [entry.primary for entry in layout.entries]),
+        volume=layout.primary_volume,
+        unmixedness=mixture.unmixedness if mixture else width_of(injectors, settings),
+        recirculation=settings.recirculation,
+        streams=settings.streams,
+        end=layout.primary_end,
+        distribution=mixture,
+    )
 
 
 def chain_pressure(split: AirSplit) -> float:

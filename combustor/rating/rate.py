@@ -16,7 +16,8 @@ from combustor.hardware.from_case import hardware_of
 from combustor.hardware.metal import Hardware
 from combustor.rating.assemble import rated, unrated
 from combustor.rating.couple import Coupled, couple
-from combustor.rating.judge import findings_of
+from combustor.rating.judge import findings_of, gravest_first
+from combustor.rating.operability import NOTHING, deceleration, operability_of
 from combustor.rating.operating import operating_of
 from combustor.rating.record import PointRating, Ratings
 from combustor.rating.settings import Settings, settings_of
@@ -64,20 +65,35 @@ def rate_case(
     else:
         hardware = hardware_of(case)
     settings = settings_of(case.model)
+    rated = tuple(
+        rate_point(case, p, fuel, gas, hardware, settings, operability=True) for p in wanted
+    )
     return Ratings(
         title=case.title,
         case_sha256=case.sha256,
-        points=tuple(rate_point(case, p, fuel, gas, hardware, settings) for p in wanted),
+        points=rated,
         sized=case.hardware is None,
-        findings=findings,
+        findings=findings + deceleration(rated),
     )
 
 
 def rate_point(
-    case: Case, point: Point, fuel: Fuel, gas: Gas, hardware: Hardware, settings: Settings
+    case: Case,
+    point: Point,
+    fuel: Fuel,
+    gas: Gas,
+    hardware: Hardware,
+    settings: Settings,
+    operability: bool = False,
 ) -> PointRating:
-    """Return what given metal does at one operating point."""
-    return rate_near(case, point, fuel, gas, hardware, settings)[0]
+    """Return what given metal does at one operating point.
+
+    Parameters
+    ----------
+    operability : bool
+        As in :func:`rate_near`.
+    """
+    return rate_near(case, point, fuel, gas, hardware, settings, None, operability)[0]
 
 
 def rate_near(
@@ -88,6 +104,7 @@ def rate_near(
     hardware: Hardware,
     settings: Settings,
     near: Coupled | None = None,
+    operability: bool = False,
 ) -> tuple[PointRating, Coupled]:
     """Return a rated point and the solution behind it, started from a neighbour's if there is one.
 
@@ -95,6 +112,9 @@ def rate_near(
     ----------
     near : Coupled, optional
         As in :func:`combustor.rating.couple.couple`.
+    operability : bool
+        Also follow the burning branch down to blow-out and judge light-up and premixers: costs
+        about as much again as the rating itself.
     """
     operating = operating_of(case, point, fuel, gas)
     coupled = couple(gas, fuel, operating, hardware, settings, near)
@@ -103,7 +123,19 @@ def rate_near(
     else:
         record = rated(gas, operating, hardware, fuel, coupled, settings)
     findings = findings_of(case, point, record, coupled, fuel, settings)
-    return replace(record, findings=findings), coupled
+    if not operability:
+        return replace(record, findings=findings), coupled
+    if record.status != "burning":
+        return replace(record, findings=findings, operability=NOTHING), coupled
+    judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record)
+    methods = {method.key: method for method in (*record.methods, *judged.methods)}
+    record = replace(
+        record,
+        findings=gravest_first((*findings, *judged.findings)),
+        operability=judged.values,
+        methods=tuple(methods.values()),
+    )
+    return record, coupled
 
 
 def _wanted(case: Case, points: Sequence[str] | None) -> tuple[Point, ...]:

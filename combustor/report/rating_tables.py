@@ -147,7 +147,9 @@ def operability_table(point: PointRating) -> Table:
     """Return blow-out and what else was judged of stability, one line a quantity."""
     known = {field.key: field for field in fields.OPERABILITY}
     records = []
-    for key in point.operability:
+    for key, value in point.operability.items():
+        if value is None and key in known:
+            continue
         field = known.get(key, Field(key, key.replace("_", " "), figures=4))
         records.append(
             {"what": field.label, "value": field.text(point.operability), "unit": field.unit}

@@ -12,6 +12,7 @@ FLOORS = {
     "base": 0,
     "case": 1,
     "gasdynamics": 1,
+    "atmosphere": 1,
     "hardware": 2,
     "fuel": 2,
     "airflow": 3,
