@@ -13,6 +13,7 @@ from typing import Any
 from combustor.base.errors import Problem
 from combustor.case import kinds as k
 from combustor.case.consistency_hardware import hardware_problems
+from combustor.case.flight import INLET_KEYS
 from combustor.case.problems import Reporter
 from combustor.case.quantity import Quantity, QuantityError
 from combustor.case.reading import named, number, stated, table, tables
@@ -199,6 +200,7 @@ def _split_names(
 ) -> Iterator[Problem]:
     hardware = table(report.document, "hardware")
     injectors = [row["name"] for _, row in named(hardware or {}, "injectors")]
+    yield from _flight(path, point, report)
     if not injectors:
         return
     for name in split:
@@ -216,6 +218,24 @@ def _targets(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]
     targets = table(document, "targets")
     if "targets" in document and targets is None:
         return
+def _flight(
+    path: tuple[str | int, ...], point: Mapping[str, Any], report: Reporter
+) -> Iterator[Problem]:
+    if stated(point, "altitude"):
+        for key in INLET_KEYS:
+            if stated(point, key):
+                yield report.problem(
+                    (*path, key),
+                    "contradicts altitude",
+                    "the flight gives the inlet: state altitude, flight_mach and ram_recovery, or "
+                    "inlet_pressure and inlet_temperature",
+                )
+        return
+    for key in ("flight_mach", "ram_recovery"):
+        if stated(point, key):
+            yield report.problem((*path, key), "no altitude stated", "add altitude", point[key])
+
+
     targets = targets or {}
     names = [row["name"].strip() for _, row in named(document, "points")]
     wanted = targets.get("design_point")

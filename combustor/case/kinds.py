@@ -50,6 +50,9 @@ FUEL_TEMPERATURE = Quantity(
 AMBIENT_TEMPERATURE = Quantity(
     "ambient temperature", "temperature", 180.0, 340.0, '"15 degC"', "180 to 340 K"
 )
+ALTITUDE = Quantity("altitude", "length", -500.0, 2e4, '"9000 m"', "-500 to 20000 m, geopotential")
+FLIGHT_MACH = Quantity("flight Mach number", "ratio", 0.0, 3.0, "0.8", "0 to 3")
+RAM_RECOVERY = Quantity("ram recovery", "ratio", -0.5, 1.0, '0.95 or "95 %"', "-50 to 100 %")
 WALL_TEMPERATURE = Quantity(
     "wall temperature", "temperature", 500.0, 1900.0, '"850 degC"', "500 to 1900 K"
 )
@@ -146,6 +149,9 @@ Concentration = Annotated[float, BeforeValidator(CONCENTRATION.validate)]
 Emissivity = Annotated[float, BeforeValidator(EMISSIVITY.validate)]
 MoleFraction = Annotated[float, BeforeValidator(MOLE_FRACTION.validate)]
 Unmixedness = Annotated[float, BeforeValidator(UNMIXEDNESS.validate)]
+Altitude = Annotated[float, BeforeValidator(ALTITUDE.validate)]
+FlightMach = Annotated[float, BeforeValidator(FLIGHT_MACH.validate)]
+RamRecovery = Annotated[float, BeforeValidator(RAM_RECOVERY.validate)]
 EquivalenceRatio = Annotated[float, BeforeValidator(EQUIVALENCE_RATIO.validate)]
 Recirculation = Annotated[float, BeforeValidator(RECIRCULATION.validate)]
 ResidenceTime = Annotated[float, BeforeValidator(RESIDENCE_TIME.validate)]

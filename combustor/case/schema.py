@@ -6,11 +6,21 @@ Keys, their units when written bare, and their defaults stand here once.
 from __future__ import annotations
 
 import math
+from collections.abc import Mapping
 from typing import Any, Literal
 
-from pydantic import BaseModel, ConfigDict, Field, PrivateAttr
+from pydantic import (
+    BaseModel,
+    ConfigDict,
+    Field,
+    PrivateAttr,
+    SerializerFunctionWrapHandler,
+    model_serializer,
+    model_validator,
+)
 
 from combustor.case import kinds as k
+from combustor.case.flight import FLIGHT_KEYS, INLET_KEYS, with_inlet
 from combustor.case.hardware_table import HardwareTable
 
 Layout = Literal["can", "can-annular", "annular"]
@@ -75,7 +85,9 @@ class Point(Table):
     ``air_flow`` is moist, whole machine, kg/s; ``inlet_pressure`` total and absolute, Pa;
     temperatures K; ``humidity`` kg water per kg dry air; ``load`` in percent of rated
     output; ``output`` W; ``water_injection`` kg/s. Exactly one of ``exit_temperature``,
-    ``fuel_flow`` and ``fuel_air_ratio`` is not None.
+    ``fuel_flow`` and ``fuel_air_ratio`` is not None. Given ``altitude`` (geopotential m of the
+    standard day), inlet pressure and temperature are those behind the intake at ``flight_mach``,
+    with ``ram_recovery`` of the isentropic pressure rise: ram air, or a windmilling engine.
     """
 
     name: k.Name
@@ -141,6 +153,21 @@ class Targets(Table):
     swirler_hub_diameter: k.HubDiameter | None = None
     swirlers: k.Holes | None = None
     pilot_fuel: k.Fraction = 0.10
+    altitude: k.Altitude | None = None
+    flight_mach: k.FlightMach = 0.0
+    ram_recovery: k.RamRecovery = 1.0
+
+    @model_validator(mode="before")
+    @classmethod
+    def _from_flight(cls, stated: Any) -> Any:
+        return with_inlet(stated) if isinstance(stated, Mapping) else stated
+
+    @model_serializer(mode="wrap")
+    def _as_stated(self, serialise: SerializerFunctionWrapHandler) -> dict[str, Any]:
+        # what follows from the flight is not stated again, nor a flight that there is not
+        whole: dict[str, Any] = serialise(self)
+        left_out = FLIGHT_KEYS if self.altitude is None else INLET_KEYS
+        return {key: value for key, value in whole.items() if key not in left_out}
     premixer_time: k.ResidenceTime = 1.0e-3
     hole_edge: Literal["plain", "plunged"] = "plain"
     primary_holes: k.Holes | None = None
