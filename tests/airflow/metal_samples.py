@@ -133,6 +133,19 @@ def can(
     )  # fmt: skip
 
 
+def can_annular() -> Hardware:
+    """Three cans in one ring: the air passes between them, no longer in a gap of one width."""
+    three = can(cans=3)
+    area, hydraulic = 1.35 * three.annuli[0].area.value[0], 0.055
+    tubes = row("cross-fire", "leak", 0.12, 2, 0.008, edge="orifice", feed="static")
+    metal = replace(
+        three,
+        layout="can-annular",
+        annuli=(Passage("outer", AxialProfile.constant(area), AxialProfile.constant(hydraulic)),),
+    )
+    return with_opening(metal, tubes)
+
+
 def annular_inlet(share: float = 1.0) -> Inlet:
     """An aero-type annular machine: 20 kg/s, 16 bar, 750 K."""
     return Inlet(20.0 * share, 1.6e6, 750.0, 287.05, 1.38)

@@ -1,3 +1,5 @@
+from dataclasses import replace
+
 import independent
 import metal_samples as metal
 import pytest
@@ -8,6 +10,12 @@ CASES = {
     "can-cold": (metal.can, metal.can_inlet, None),
     "can-fired": (metal.can, metal.can_inlet, 0.245),
     "can-reverse-fired": (lambda: metal.can("reverse"), metal.can_inlet, 0.245),
+    "can-annular-fired": (metal.can_annular, lambda: metal.can_inlet(3.0), 3 * 0.245),
+    "can-annular-reverse-fired": (
+        lambda: replace(metal.can_annular(), flow="reverse"),
+        lambda: metal.can_inlet(3.0),
+        3 * 0.245,
+    ),
     "annular-reverse-fired": (lambda: metal.annular("reverse"), metal.annular_inlet, 0.50),
     "annular-cold": (metal.annular, metal.annular_inlet, None),
     "annular-fired": (metal.annular, metal.annular_inlet, 0.50),
