@@ -86,8 +86,8 @@ def rated(
         operability={
             "blowout_fuel_air_ratio": None,
             "blowout_margin_percent": None,
-            **wall_quench_of(gas, hardware, fire, emissions),
         },
+        near_wall=wall_quench_of(gas, hardware, fire, emissions),
         balances=balances_of(gas, operating, coupled),
         methods=methods_of(hardware, fuel, coupled),
         convergence=coupled.convergence,

@@ -204,8 +204,8 @@ def _jets(rated: PointRating) -> Iterator[Finding]:
 
 def _wall_quench(rated: PointRating) -> Iterator[Finding]:
     """Judge the carbon monoxide that film air keeps from burning, where it counts."""
-    share = rated.operability.get("co_beside_wall_percent")
-    quenched = rated.operability.get("co_quenched_at_wall_ppmvd_15")
+    share = rated.near_wall.get("co_beside_wall_percent")
+    quenched = rated.near_wall.get("co_quenched_at_wall_ppmvd_15")
     made = None if rated.emissions is None else rated.emissions.co_dry_15
     if share is None or quenched is None or made is None or quenched < LEAST_QUENCH:
         return

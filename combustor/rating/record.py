@@ -86,9 +86,10 @@ class PointRating:
     """What the metal does at one operating point on one fuel.
 
     Fractions are fractions (pressure_loss 0.045), SI throughout. ``balances`` holds "air",
-    "elements" and "enthalpy" imbalances as defined for the JSON output. ``methods`` are the
-    published methods this result stands on, for the table of sources. ``hardware`` is the
-    metal the split belongs to; ``injectors`` what each of its injectors burns; ``cautions`` are
+    "elements" and "enthalpy" imbalances as defined for the JSON output. ``near_wall`` says how
+    much of the CO leaves the liner beside the wall and how much of it was quenched there.
+    ``methods`` are the published methods this result stands on, for the table of sources.
+    ``hardware`` is the metal the split belongs to; ``injectors`` what each of its injectors burns; ``cautions`` are
     what the fuel asks the reader to mind.
     """
 
@@ -109,6 +110,7 @@ class PointRating:
     walls: tuple[WallPoint, ...] = ()
     emissions: Emissions | None = None
     operability: Mapping[str, float | None] = field(default_factory=dict)
+    near_wall: Mapping[str, float | None] = field(default_factory=dict)
     balances: Mapping[str, float] | None = None
     findings: tuple[Finding, ...] = ()
     methods: tuple[Method, ...] = ()

@@ -39,6 +39,7 @@ def point_document(point: PointRating) -> dict[str, Any]:
         "walls": [row(fields.WALLS, wall) for wall in point.walls],
         "emissions": row(fields.EMISSIONS, point.emissions),
         "operability": dict(point.operability),
+        "near_wall": dict(point.near_wall),
         "balances": row(fields.BALANCES, point.balances),
         "findings": findings_list(point.findings),
     }

@@ -107,7 +107,7 @@ def test_no_films_no_stream_beside_the_wall(bench):
     operating = operating_of(bench.case, bench.point("full"), bench.fuel, bench.gas)
     coupled = couple(bench.gas, bench.fuel, operating, bare, bench.settings)
     assert all(exchange.entrained == 0.0 for exchange in coupled.fire.beside.exchanges)
-    assert bench.rate("full", hardware=bare).operability.get("co_beside_wall_percent") is None
+    assert bench.rate("full", hardware=bare).near_wall.get("co_beside_wall_percent") is None
 
 
 def test_films_that_take_nothing_in_are_the_mixing_model(bench, solved):
@@ -138,7 +138,7 @@ def test_idle_co_rises_with_film_share_through_quenching(bench):
     for factor in (0.5, 1.0, 2.0):
         rating = bench.rate("idle", hardware=traded(bench, factor))
         made.append(1e6 * rating.emissions.co_dry_15)
-        quenched.append(rating.operability["co_quenched_at_wall_ppmvd_15"])
+        quenched.append(rating.near_wall["co_quenched_at_wall_ppmvd_15"])
     assert made == sorted(made) and made[-1] > 1.3 * made[0]
     # by how much: some ppm at 6 % film air, tens at 25 %
     assert quenched == sorted(quenched)
