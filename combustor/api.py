@@ -10,7 +10,7 @@ if TYPE_CHECKING:
     from combustor.fuel.record import Fuel
     from combustor.report.frame import RatedCase
     from combustor.sizing.record import Design
-    from combustor.studies.comply import ComplyCheck
+    from combustor.studies.comply_record import ComplyCheck
     from combustor.studies.flame import Flame
 
 

@@ -25,7 +25,7 @@ from combustor.emissions.rule_set import find_rules, names
 from combustor.emissions.rule_template import template
 from combustor.report.csv_out import check_free
 from combustor.report.json_out import dumps
-from combustor.studies.convert import Moisture, Plant, Sample
+from combustor.studies.convert_record import Moisture, Plant, Sample
 
 _OXYGEN = Quantity("O2", "ratio", 0.0, 0.21, '"14.2 %" or 0.142', "0 to 21 %", bare="fraction")
 _AIR = Quantity("O2 in air", "ratio", 0.2, 0.22, '"20.9 %"', "20 to 22 %", bare="fraction")

@@ -97,8 +97,6 @@ class Subject:
     ambient : AmbientAir or None
         None where ambient temperature or pressure is not stated.
     no_result : str
-    cycle : bool
-        Whether it is the landing and take-off cycle.
     """
 
     name: str
@@ -108,7 +106,6 @@ class Subject:
     front_end: str = "diffusion"
     ambient: AmbientAir | None = None
     no_result: str = ""
-    cycle: bool = False
 
 
 def verdict_on(

@@ -13,7 +13,7 @@ from combustor.emissions.smoke import soot_trend
 from combustor.emissions.stack import FactMissing, Stack
 from combustor.report import permit_fields as fields
 from combustor.report.document import Table
-from combustor.studies.comply import ComplyCheck
+from combustor.studies.comply_record import ComplyCheck
 
 COMPLY_TABLES = (
     "verdicts",

@@ -22,7 +22,7 @@ from combustor.report.comply_data import (
 from combustor.report.document import Block, Facts, Heading, Prose, Table
 from combustor.report.field import Field, row, select
 from combustor.report.permit_theme import CAUTION, MARKS, WORDS
-from combustor.studies.comply import ComplyCheck
+from combustor.studies.comply_record import ComplyCheck
 
 _DECIDED = (
     Field("words", "verdict"),

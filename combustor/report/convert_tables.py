@@ -10,7 +10,7 @@ from combustor.report.cautions import sentence
 from combustor.report.comply_data import factor_records
 from combustor.report.document import Block, Facts, Heading, Prose, Table
 from combustor.report.field import select
-from combustor.studies.convert import Conversion
+from combustor.studies.convert_record import Conversion
 
 CONVERT_TABLES = ("steps", "results", "fuel_factors")
 

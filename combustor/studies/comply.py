@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, replace
 from datetime import date
 from pathlib import Path
 
@@ -11,108 +10,19 @@ from combustor.base.errors import InputError, Problem
 from combustor.case.schema import Case, Point
 from combustor.emissions.applicability import Binding, rows_binding, set_binds
 from combustor.emissions.facts import Answer, Facts
-from combustor.emissions.landing_takeoff import TIME_IN_MODE, Mode, mass_per_thrust
 from combustor.emissions.limit import FuelOfLimit
-from combustor.emissions.reference_day import AmbientAir, aircraft_humidity_factor
+from combustor.emissions.reference_day import AmbientAir
 from combustor.emissions.rule_set import RuleSet, find_rules, names
-from combustor.emissions.stack import FactMissing, Stack, stack_of
+from combustor.emissions.stack import Stack, stack_of
 from combustor.emissions.verdict import Subject, Verdict, verdict_on
 from combustor.fuel.of_case import fuel_of
 from combustor.fuel.record import Fuel
 from combustor.rating.rate import rate_case
 from combustor.rating.record import PointRating, Ratings
-from combustor.studies.close_gap import Gap, gaps_of
+from combustor.studies.close_gap import gaps_of
+from combustor.studies.comply_record import ComplyCheck, Standing
+from combustor.studies.landing_cycle import cycle_of
 from combustor.studies.machine_facts import facts_at, facts_of, fuel_sulfur
-
-CYCLE = "landing and take-off"
-_MODES = {
-    "take-off": "take-off",
-    "takeoff": "take-off",
-    "climb": "climb",
-    "climb-out": "climb",
-    "approach": "approach",
-    "idle": "idle",
-    "taxi": "idle",
-}
-
-
-@dataclass(frozen=True)
-class Standing:
-    """Whether a row (or a whole set, ``row`` empty) binds, at which points, and why not.
-
-    ``binds`` is None where facts are missing.
-    """
-
-    rule: str
-    row: str
-    points: tuple[str, ...]
-    binds: bool | None
-    why: str
-
-
-@dataclass(frozen=True)
-class ComplyCheck:
-    """Everything a pre-check found.
-
-    Parameters
-    ----------
-    title, case_sha256, fuel : str
-    verdicts : tuple of Verdict
-        Every limit that binds or may bind, at every point.
-    standings : tuple of Standing
-    gaps : tuple of Gap
-        What would close those that are not inside.
-    stacks : mapping of str to Stack
-        By operating point, those that burn.
-    rules : tuple of RuleSet
-        All that were looked at.
-    facts : Facts
-    overdue : tuple of str
-        Sets past their review date.
-    notes : tuple of str
-    cautions : tuple of str
-        Of the fuel.
-    burnt : Fuel
-    ratings : Ratings
-    leaning_on : tuple of str
-        Facts taken from the case, not stated, by which a named set or row was left out.
-    """
-
-    title: str
-    case_sha256: str
-    fuel: str
-    verdicts: tuple[Verdict, ...]
-    standings: tuple[Standing, ...]
-    gaps: tuple[Gap, ...]
-    stacks: Mapping[str, Stack]
-    rules: tuple[RuleSet, ...]
-    facts: Facts
-    overdue: tuple[str, ...]
-    notes: tuple[str, ...]
-    cautions: tuple[str, ...]
-    burnt: Fuel
-    ratings: Ratings
-    leaning_on: tuple[str, ...] = ()
-
-    @property
-    def inside(self) -> bool | None:
-        """Whether every limit that binds is kept: of a choice, one option at each point.
-
-        None where no limit binds; False where that rests on a fact nobody stated.
-        """
-        if self.leaning_on:
-            return False
-        if not self.verdicts:
-            return None
-        open_choices: dict[tuple[str, str], bool] = {}
-        for verdict in self.verdicts:
-            good = verdict.verdict == "inside"
-            if verdict.choice:
-                place = (verdict.point, verdict.choice)
-                open_choices[place] = open_choices.get(place, False) or good
-            elif not good:
-                return False
-        return all(open_choices.values())
 
 
 def comply(
@@ -152,7 +62,7 @@ def comply(
     facts = facts_of(case, fuel, found)
     stacks = {rated.name: _stack(case, fuel, rated) for rated in found.points if rated.emissions}
     subjects = [_subject(case, fuel, facts, rated, stacks) for rated in found.points]
-    cycle = _cycle(case, fuel, facts, found, stacks)
+    cycle = cycle_of(case, _limit_fuel(fuel), facts, found, stacks)
     own = case.rules.scatter.model_dump(exclude_none=True)
     verdicts: list[Verdict] = []
     standings: list[Standing] = []
@@ -334,75 +244,6 @@ def _ambient(point: Point) -> AmbientAir | None:
     if point.ambient_temperature is None or point.ambient_pressure is None:
         return None
     return AmbientAir(point.ambient_temperature, point.ambient_pressure, point.humidity)
-
-
-def _cycle(
-    case: Case, fuel: Fuel, facts: Facts, ratings: Ratings, stacks: Mapping[str, Stack]
-) -> Subject:
-    """Return the landing and take-off cycle as one subject."""
-    subject = Subject(
-        CYCLE,
-        None,
-        facts,
-        _limit_fuel(fuel),
-        front_end=case.targets.front_end,
-        cycle=True,
-        no_result="needs points with cycle_mode " + ", ".join(TIME_IN_MODE),
-    )
-    modes = _modes(case, ratings)
-    lacking = [mode for mode in TIME_IN_MODE if mode not in modes]
-    if lacking:
-        return replace(subject, no_result=f"needs a point with cycle_mode {', '.join(lacking)}")
-    silent = [name for name in modes.values() if name not in stacks]
-    if silent:
-        return replace(subject, no_result=f"no result at point {', '.join(silent)}")
-    thrust = facts.values.get("rated_thrust")
-    stack = stacks[modes["take-off"]]
-    if thrust is not None:
-        totals = {}
-        for pollutant in ("NOx", "CO", "UHC"):
-            try:
-                totals[pollutant] = _per_thrust(case, pollutant, modes, stacks, thrust)
-            except FactMissing:
-                continue
-        stack = replace(stack, per_thrust=totals)
-    return replace(subject, stack=stack)
-
-
-def _per_thrust(
-    case: Case, pollutant: str, modes: Mapping[str, str], stacks: Mapping[str, Stack], thrust: float
-) -> float:
-    found = {}
-    for mode, name in modes.items():
-        stack = stacks[name]
-        index = stack.mass_flow(pollutant) / stack.fuel_flow
-        if pollutant == "NOx":
-            index *= aircraft_humidity_factor(case.point(name).humidity)
-        found[mode] = Mode(index, stack.fuel_flow)
-    return mass_per_thrust(found, thrust)
-
-
-def _modes(case: Case, ratings: Ratings) -> dict[str, str]:
-    """Return the point of each mode of the landing and take-off cycle."""
-    rated = {point.name for point in ratings.points}
-    modes: dict[str, str] = {}
-    for point in case.points:
-        if point.cycle_mode is None or point.name not in rated:
-            continue
-        mode = _MODES.get(point.cycle_mode.lower())
-        if mode is None:
-            continue
-        if mode in modes:
-            raise InputError(
-                Problem(
-                    f"two points are the {mode} of the cycle",
-                    "one point a mode",
-                    "points.cycle_mode",
-                    f"{modes[mode]}, {point.name}",
-                )
-            )
-        modes[mode] = point.name
-    return modes
 
 
 def _notes(case: Case, facts: Facts, fuel: Fuel, leaning: set[str]) -> tuple[str, ...]:

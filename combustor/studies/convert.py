@@ -2,13 +2,11 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from typing import Literal
 
-from combustor.base.errors import InputError, Problem
-from combustor.emissions.bases import OXYGEN_IN_AIR, REFERENCE_OXYGEN
+from combustor.emissions.bases import REFERENCE_OXYGEN
 from combustor.emissions.concentration import (
     Basis,
     Concentration,
@@ -16,7 +14,7 @@ from combustor.emissions.concentration import (
     mean,
     measured,
 )
-from combustor.emissions.emission_unit import US_STANDARD, EmissionUnit, read_unit
+from combustor.emissions.emission_unit import US_STANDARD, EmissionUnit
 from combustor.emissions.fuel_class import standing
 from combustor.emissions.fuel_factor import (
     DEFAULTS,
@@ -27,103 +25,17 @@ from combustor.emissions.fuel_factor import (
 )
 from combustor.emissions.hydrogen_reading import apparent_factor
 from combustor.emissions.pollutant import Pollutant, find
-from combustor.emissions.reference_day import REFERENCE_PRESSURE, AmbientAir, iso_factor
+from combustor.emissions.reference_day import REFERENCE_PRESSURE, iso_factor
 from combustor.fuel.record import Fuel
-
-Moisture = Literal["wet", "dry"]
-
-
-@dataclass(frozen=True)
-class Sample:
-    """How the gas was sampled.
-
-    Parameters
-    ----------
-    oxygen : tuple of float
-        Mole fraction as the O2 cell showed it, one a run; empty where no value needs it.
-    moisture, oxygen_moisture : {"wet", "dry"}
-    water : float or None
-        Mole fraction in the wet gas.
-    oxygen_in_air : float
-        Of dry air, by which O2 is corrected.
-    """
-
-    oxygen: tuple[float, ...] = ()
-    moisture: Moisture = "dry"
-    oxygen_moisture: Moisture = "dry"
-    water: float | None = None
-    oxygen_in_air: float = OXYGEN_IN_AIR
-
-
-@dataclass(frozen=True)
-class Plant:
-    """What a unit per output or per time needs; None is not known.
-
-    Parameters
-    ----------
-    heat_input : float or None
-        On the lower heating value, W.
-    output : float or None
-        W.
-    hours : float or None
-        A year.
-    ambient : AmbientAir or None
-        For the ISO-day correction of NOx.
-    front_end : str
-    """
-
-    heat_input: float | None = None
-    output: float | None = None
-    hours: float | None = None
-    ambient: AmbientAir | None = None
-    front_end: str = "diffusion"
-
-
-@dataclass(frozen=True)
-class Step:
-    """One step: what was done and what it gave."""
-
-    what: str
-    value: float
-    unit: str
-
-
-@dataclass(frozen=True)
-class Result:
-    """The emission in one unit asked for; ``note`` says what it rests on."""
-
-    unit: str
-    value: float
-    note: str = ""
-
-
-@dataclass(frozen=True)
-class Conversion:
-    """Everything that was worked out.
-
-    Parameters
-    ----------
-    species, fuel : str
-    oxygen_in_air : float
-    runs : tuple of tuple of Step
-        One run each.
-    mean : float
-        Of the corrected runs: mole fraction, dry, at 15 % O2.
-    results : tuple of Result
-    own, default : FuelFactors
-        Of this fuel computed; of its class by regulation, None where there is none.
-    notes : tuple of str
-    """
-
-    species: str
-    fuel: str
-    oxygen_in_air: float
-    runs: tuple[tuple[Step, ...], ...]
-    mean: float
-    results: tuple[Result, ...]
-    own: FuelFactors
-    default: FuelFactors | None
-    notes: tuple[str, ...]
+from combustor.studies.convert_reading import impossible, lacking, per_run, read_value, units_of
+from combustor.studies.convert_record import (
+    Conversion,
+    Moisture,
+    Plant,
+    Result,
+    Sample,
+    Step,
+)
 
 
 def convert(
@@ -156,10 +68,10 @@ def convert(
     """
     sample, plant = sample or Sample(), plant or Plant()
     pollutant = find(species)
-    oxygen = _per_run(sample.oxygen, len(values))
+    oxygen = per_run(sample.oxygen, len(values))
     own = factors_of_fuel(fuel.atoms, fuel.higher_heating_value)
     work = _Work(pollutant, fuel, own, sample, plant)
-    units = _units(to)
+    units = units_of(to)
     runs, corrected = [], []
     for value, o2 in zip(values, oxygen, strict=True):
         steps, concentration = work.run(value, o2)
@@ -224,11 +136,11 @@ class _Work:
             state = OxygenState(unit.oxygen, self.sample.oxygen_in_air)
             counted = self.pollutant.counted_as
             if moisture == "wet" and water is None:
-                raise _lacking("--moisture", f"{unit.text} is wet")
+                raise lacking("--moisture", f"{unit.text} is wet")
             basis = Basis(name, counted, moisture, state, unit.temperature, water)
             return Concentration(value, basis)
         if oxygen is None:
-            raise _lacking("--o2", f"{unit.text} names no O2, and none was given")
+            raise lacking("--o2", f"{unit.text} names no O2, and none was given")
         found = measured(value, name, oxygen, moisture, self.sample.oxygen_moisture, water)
         return replace(found, basis=replace(found.basis, temperature=unit.temperature))
 
@@ -249,7 +161,7 @@ class _Work:
         lower, higher = self.fuel.lower_heating_value, self.fuel.higher_heating_value
         if unit.kind == "heat":
             if unit.heat is None:
-                raise _lacking("LHV or HHV with the value", f"{unit.text} leaves open which heat")
+                raise lacking("LHV or HHV with the value", f"{unit.text} leaves open which heat")
             heat = value * (lower / higher if unit.heat == "LHV" else 1.0)
         elif unit.kind == "index":
             heat = value / higher
@@ -261,7 +173,7 @@ class _Work:
             seconds = self._need("hours") * 3600.0
             heat = value / seconds / (self._need("heat_input") * higher / lower)
         else:
-            raise _impossible(unit)
+            raise impossible(unit)
         steps.append(Step("per heat", heat * 1e12, "ng/J HHV"))
         return heat
 
@@ -301,7 +213,7 @@ class _Work:
         found = average.at_oxygen(reference, self.sample.oxygen_in_air)
         if unit.moisture == "wet":
             if found.basis.water is None:
-                raise _lacking("--moisture", f"{unit.text} is wet")
+                raise lacking("--moisture", f"{unit.text} is wet")
             found = found.wet()
         if unit.temperature is not None:
             found = found.as_mass(unit.temperature)
@@ -326,7 +238,7 @@ class _Work:
             if unit.kind == "year":
                 value *= self._need("hours") * 3600.0
         else:
-            raise _impossible(unit)
+            raise impossible(unit)
         word = "default" if default is not None else "own"
         note = f"{word} Fd {factors.in_scf()[0]:.0f} dscf/MMBtu, as {self.pollutant.counted_as}"
         return Result(unit.text, value / unit.factor, note)
@@ -335,95 +247,8 @@ class _Work:
         value = getattr(self.plant, name)
         if value is None:
             option = "--" + name.replace("_", "-")
-            raise _lacking(option, f"this unit needs the {name.replace('_', ' ')}")
+            raise lacking(option, f"this unit needs the {name.replace('_', ' ')}")
         return float(value)
-
-
-_VALUE = re.compile(r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*)", re.S)
-_LEAST_PPM = 1e-3
-
-
-def read_value(text: str, moisture: Moisture) -> tuple[float, EmissionUnit, Moisture]:
-    """Return number, unit and moisture of what an analyser showed.
-
-    A bare number is in ppm of the gas as sampled.
-
-    Raises
-    ------
-    InputError
-        Not a number with a unit of emission, negative, or so small that a mole fraction
-        was meant; dry in the unit and wet in the sample.
-    """
-    match = _VALUE.fullmatch(text)
-    if match is None:
-        raise InputError(
-            Problem("not a number with a unit", 'write 43.2 or "43.2 ppm"', "VALUE", text)
-        )
-    number, unit_text = float(match[1]), match[2].strip()
-    if not 0.0 <= number < 1e9:
-        raise InputError(Problem("not a concentration", "zero or above", "VALUE", text))
-    if not unit_text and 0.0 < number < _LEAST_PPM:
-        raise InputError(
-            Problem(
-                "a bare number is in ppm: was a mole fraction meant?",
-                f'write "{number * 1e6:.6g} ppm", or "{number:g} ppm" if it is that small',
-                "VALUE",
-                text,
-            )
-        )
-    unit = read_unit(unit_text or "ppm")
-    stated: Moisture | None = None
-    if re.match(r"^(ppm|ppb)v?d|.*dry", unit_text):
-        stated = "dry"
-    elif unit.moisture == "wet":
-        stated = "wet"
-    if stated is not None and stated != moisture and unit.oxygen is None and moisture == "wet":
-        raise InputError(
-            Problem(
-                f"{unit_text} is {stated}, but the sample is said to be {moisture}",
-                "leave out --wet, or write ppm",
-                "VALUE",
-                text,
-            )
-        )
-    seen = stated or ("dry" if unit.oxygen is not None else moisture)
-    if unit.kind == "volume":
-        letter = "w" if seen == "wet" else "d"
-        name = re.sub(r"v[dw]", f"v{letter}", unit.text)
-        unit = replace(unit, moisture=seen, text=name)
-    return number, unit, seen
-
-
-def _per_run(oxygen: Sequence[float], runs: int) -> list[float | None]:
-    if not oxygen:
-        return [None] * runs
-    if len(oxygen) == 1:
-        return [oxygen[0]] * runs
-    if len(oxygen) != runs:
-        raise InputError(
-            Problem(
-                f"{runs} values and {len(oxygen)} readings of O2",
-                "give one O2 for all runs, or one each",
-                "--o2",
-            )
-        )
-    return list(oxygen)
-
-
-def _units(to: Sequence[str]) -> list[EmissionUnit]:
-    units, problems = [], []
-    for text in to:
-        try:
-            unit = read_unit(text)
-        except InputError as error:
-            problems += [replace(problem, key="--to") for problem in error.problems]
-            continue
-        if unit.kind in ("thrust", "fuel mass"):
-            problems += list(_impossible(unit).problems)
-        units.append(unit)
-    if problems:
-        raise InputError(problems)
-    return units
 
 
 def _default_class(fuel: Fuel) -> str:
@@ -452,17 +277,6 @@ def _notes(fuel: Fuel, pollutant: Pollutant, default: FuelFactors | None) -> tup
     if pollutant.name == "NO":
         notes.append("NO by itself, as NO: limits on NOx count NO and NO2, as NO2 (mass x 1.533)")
     return tuple(notes)
-
-
-def _lacking(option: str, why: str) -> InputError:
-    return InputError(Problem(why, f"give {option}", option))
-
-
-def _impossible(unit: EmissionUnit) -> InputError:
-    why = "mass per thrust is of a landing and take-off cycle, not of one reading"
-    if unit.kind == "fuel mass":
-        why = "a share of the fuel's mass does not follow from the exhaust"
-    return InputError(Problem(why, "choose another unit", "--to", unit.text))
 
 
 def _join(*parts: str) -> str:

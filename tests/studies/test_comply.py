@@ -13,7 +13,8 @@ import combustor
 from combustor.base.errors import InputError
 from combustor.case.load import loads_case
 from combustor.emissions.landing_takeoff import characteristic_factor
-from combustor.studies.comply import CYCLE, comply
+from combustor.studies.comply import comply
+from combustor.studies.landing_cycle import CYCLE
 
 DEMO = Path(combustor.__file__).parent.parent / "demo"
 # Coarse, so that a rating costs little; what is tested here does not depend on it.

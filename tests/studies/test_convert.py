@@ -9,7 +9,9 @@ from hypothesis import strategies as st
 from combustor.base.errors import InputError
 from combustor.emissions.reference_day import AmbientAir
 from combustor.fuel import catalogue
-from combustor.studies.convert import Plant, Sample, convert, read_value
+from combustor.studies.convert import convert
+from combustor.studies.convert_reading import read_value
+from combustor.studies.convert_record import Plant, Sample
 
 METHANE = catalogue.find("methane")
 HYDROGEN = catalogue.find("hydrogen")
