@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -22,6 +22,10 @@ from combustor.rating.settings import Settings
 from combustor.rating.walls import annulus_heat_of, heat_losses_of, walls_of
 from combustor.sizing.profile import liner_profile
 
+# Streams to try, over the number wanted, where an exit temperature falls between two states.
+FINER_STREAMS = (1.25, 1.5, 1.8, 2.2, 2.7)
+STATED_FUEL = "state fuel_flow instead of exit_temperature for this point"
+
 
 @dataclass(frozen=True)
 class Coupled:
@@ -39,6 +43,11 @@ class Coupled:
         two passes.
     fuel_correction : float
         Fuel flow over that of complete combustion to the exit temperature.
+    between : bool
+        No state has the exit temperature asked for: it jumps across it where one stream of the
+        primary zone goes out.
+    streams : int or None
+        Number used where it is not the one in the settings.
     """
 
     split: AirSplit
@@ -46,6 +55,12 @@ class Coupled:
     walls: tuple[WallMarch, ...]
     convergence: Convergence
     fuel_correction: float = 1.0
+    between: bool = False
+    streams: int | None = None
+
+    def settings(self, wanted: Settings) -> Settings:
+        """Return the settings this was solved with where ``wanted`` was asked for."""
+        return wanted if self.streams is None else replace(wanted, streams=self.streams)
 
 
 def couple(
@@ -62,7 +77,9 @@ def couple(
     ``settings.tolerance`` of the inlet air, the exit temperature by more than
     ``settings.temperature_tolerance``, nor the heat through the wall by more than a
     millionth of the fuel's heat; where an exit temperature is asked for, it is met within
-    the same temperature tolerance.
+    the same temperature tolerance. In partial blow-out the exit temperature jumps by some
+    kelvin where a stream goes out; one that falls into such a jump is met with more streams,
+    whose jumps lie elsewhere, and the convergence record says so.
 
     Parameters
     ----------
@@ -70,6 +87,31 @@ def couple(
         A burning neighbour with the same openings. It saves time only: the answer is the same
         within those tolerances.
     """
+    solved = _agreed(gas, fuel, operating, hardware, settings, near)
+    if not solved.between or len(solved.fire.chain.distribution.shares) == 1:
+        return solved
+    for factor in FINER_STREAMS:
+        streams = round(factor * settings.streams)
+        finer = _agreed(gas, fuel, operating, hardware, replace(settings, streams=streams))
+        if finer.convergence.converged:
+            note = (
+                f"exit temperature met with {streams} streams; with {settings.streams} it falls "
+                "into the jump where one goes out"
+            )
+            noted = replace(finer.convergence, message=note)
+            return replace(finer, convergence=noted, streams=streams)
+    return solved
+
+
+def _agreed(
+    gas: Gas,
+    fuel: Fuel,
+    operating: Operating,
+    hardware: Hardware,
+    settings: Settings,
+    near: Coupled | None = None,
+) -> Coupled:
+    """Solve with a given number of streams."""
     layout = layout_of(hardware, settings)
     fuel_flow = operating.fuel_flow
     wanted = operating.exit_temperature
@@ -135,6 +177,8 @@ def couple(
         ):
             correction = fire.fuel_flow / operating.fuel_flow
             return Coupled(solved, fire, walls, Convergence(True, change, passes), correction)
+        if demand is not None and demand.falls_into_a_jump:
+            break
         previous, warm, losses, solved, fuel_flow = (
             fire,
             fire.chain,
@@ -142,8 +186,13 @@ def couple(
             following,
             next_fuel,
         )
+    between = demand is not None and demand.falls_into_a_jump
+    if between:
+        assert wanted is not None
+        message = f"no state has {wanted:.0f} K at the exit, it jumps across; {STATED_FUEL}"
     message = message or f"split, fire and wall still moved after {settings.passes} passes"
-    return Coupled(solved, fire, walls, Convergence(False, float(change), passes, message))
+    end = Convergence(False, float(change), passes, message)
+    return Coupled(solved, fire, walls, end, between=between)
 
 
 def _first_fire(

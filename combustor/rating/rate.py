@@ -118,6 +118,7 @@ def rate_near(
     """
     operating = operating_of(case, point, fuel, gas)
     coupled = couple(gas, fuel, operating, hardware, settings, near)
+    settings = coupled.settings(settings)
     if coupled.fire.exit is None or not coupled.convergence.converged:
         record = unrated(operating, hardware, fuel, coupled)
     else:
