@@ -17,8 +17,9 @@ from combustor.report.csv_out import check_free
 from combustor.report.json_out import dumps
 from combustor.report.progress import ProgressLine
 from combustor.report.sweep_data import SWEEP_TABLES, described, sweep_data, sweep_document
+from combustor.report.sweep_fields import Limits
 from combustor.report.sweep_picture import check_folder, check_picture, write_picture
-from combustor.report.sweep_tables import Limits, sweep_report
+from combustor.report.sweep_tables import sweep_report
 from combustor.report.terminal import Page
 from combustor.studies.sweep import Sweep, carried_out, results_name
 from combustor.studies.sweep_axis import Axis, spaced

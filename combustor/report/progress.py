@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TextIO
 
-from combustor.studies.sweep_run import Progress
+from combustor.studies.progress import Progress
 
 _WIDTH = 79
 

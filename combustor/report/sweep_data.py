@@ -9,8 +9,8 @@ from combustor.report.document import Table
 from combustor.report.field import Field, row
 from combustor.report.json_out import strict
 from combustor.report.rating_json import point_document
-from combustor.report.sweep_fields import OUTCOME, axis_field
-from combustor.report.sweep_tables import Limits, record_of, window_lines
+from combustor.report.sweep_fields import OUTCOME, Limits, axis_field
+from combustor.report.sweep_tables import record_of, window_lines
 from combustor.studies.sweep import Sweep
 from combustor.studies.sweep_trends import Sensitivity
 

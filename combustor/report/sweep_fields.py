@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import dataclass, replace
 
 from combustor.report import fields
 from combustor.report.field import Field, select
@@ -12,6 +12,20 @@ from combustor.studies.sweep_axis import Axis
 def _as(group: tuple[Field, ...], known: str, path: str, key: str = "", label: str = "") -> Field:
     field = select(group, known)[0]
     return replace(field, path=path, key=key or field.key, label=label or field.label)
+
+
+@dataclass(frozen=True)
+class Limits:
+    """What NOx and CO may be: mole fractions, dry, 15 % O2; None where nothing is asked."""
+
+    nox: float | None = None
+    co: float | None = None
+
+    @property
+    def words(self) -> str:
+        """Both in words."""
+        pairs = (("NOx", self.nox), ("CO", self.co))
+        return ", ".join(f"{n} {1e6 * v:.4g} ppm" for n, v in pairs if v is not None)
 
 
 OUTCOME: dict[str, Field] = {

@@ -10,7 +10,8 @@ from typing import Any
 
 from combustor.base.errors import InputError, Problem
 from combustor.report.document import Plot
-from combustor.report.sweep_tables import Limits, plots
+from combustor.report.sweep_fields import Limits
+from combustor.report.sweep_plots import plots
 from combustor.studies.sweep import Sweep
 
 SUFFIXES = (".png", ".svg", ".pdf")

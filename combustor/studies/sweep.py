@@ -14,10 +14,11 @@ from pathlib import Path
 from combustor import __version__
 from combustor.case.schema import Case
 from combustor.studies.executor import core_count
+from combustor.studies.progress import Report
 from combustor.studies.sweep_axis import Axis
 from combustor.studies.sweep_outcome import Outcome
 from combustor.studies.sweep_plan import Plan, Row, plan
-from combustor.studies.sweep_run import InMemory, Report, labels, solve
+from combustor.studies.sweep_run import InMemory, labels, solve
 from combustor.studies.sweep_store import Result, ResultsFile
 from combustor.studies.sweep_trends import Sensitivity, Window, sensitivities, windows
 from combustor.studies.sweep_work import Describe

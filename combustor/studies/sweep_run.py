@@ -2,9 +2,8 @@
 
 from __future__ import annotations
 
-import time
 from collections import deque
-from collections.abc import Callable, Iterable
+from collections.abc import Iterable
 from concurrent.futures import (
     FIRST_COMPLETED,
     BrokenExecutor,
@@ -18,7 +17,8 @@ from typing import Any, Protocol
 
 from combustor.base.errors import CombustorError
 from combustor.rating.couple import Coupled
-from combustor.studies.executor import InThisProcess, WorkerProcesses
+from combustor.studies.pool import Pool
+from combustor.studies.progress import Pace, Progress, Report
 from combustor.studies.sweep_outcome import reason_of
 from combustor.studies.sweep_plan import Chunk, Plan
 from combustor.studies.sweep_store import Result
@@ -27,12 +27,10 @@ from combustor.studies.sweep_work import (
     Done,
     Sized,
     Task,
-    given_up,
     rate_task,
     size_row,
 )
 
-MOST_PENDING = 256  # tasks an executor of the caller's is given at once
 MOST_BREAKS = 3  # times that all workers may die with nothing brought back in between
 
 
@@ -56,36 +54,10 @@ class InMemory:
         self.results.append(result)
 
 
-@dataclass(frozen=True)
-class Progress:
-    """How far a sweep has come.
-
-    Parameters
-    ----------
-    total, finished, resumed, failed : int
-        Ratings in all, with a result, of those found in the results file, without a flame or an
-        answer.
-    elapsed : float
-        s.
-    remaining : float or None
-        s, at the pace so far; None before the first.
-    """
-
-    total: int
-    finished: int
-    resumed: int
-    failed: int
-    elapsed: float
-    remaining: float | None
-
-
 class WorkersDiedError(CombustorError):
     """The worker processes keep dying; what was finished is kept."""
 
     exit_code = 1
-
-
-Report = Callable[[Progress], None]
 
 
 def solve(
@@ -118,7 +90,7 @@ def solve(
     WorkersDiedError
         Own workers died again and again, or the caller's executor broke.
     """
-    pool = _Pool(executor, workers)
+    pool = Pool(executor, workers)
     run = _Run(plan, store, describe, report)
     if run.todo:
         try:
@@ -126,37 +98,6 @@ def solve(
         finally:
             pool.close()
     run.tell()
-
-
-class _Pool:
-    """The caller's executor; or our own, made anew when its processes die."""
-
-    def __init__(self, given: Executor | None, workers: int) -> None:
-        self.given = given
-        self.workers = workers
-        self.own: WorkerProcesses | None = None
-        self.here = InThisProcess() if given is None and workers == 1 else None
-        self.room = MOST_PENDING if given is not None else 4 * workers
-        if self.here is not None:
-            self.room = 1
-
-    def submit(self, work: Callable[..., Any], *arguments: Any) -> Future[Any]:
-        executor = self.given or self.here or self.own
-        if executor is None:
-            executor = self.own = WorkerProcesses(self.workers)
-        return executor.submit(work, *arguments)
-
-    def renew(self) -> bool:
-        """Drop a broken executor; False when it is not our own."""
-        if self.own is None:
-            return False
-        self.close()
-        return True
-
-    def close(self) -> None:
-        if self.own is not None:
-            self.own.stop()
-            self.own = None
 
 
 @dataclass(frozen=True)
@@ -183,8 +124,7 @@ class _Run:
         self.store = store
         self.describe = describe
         self.report = report
-        self.begun = time.monotonic()
-        self.first: tuple[float, int] | None = None
+        self.pace = Pace()
         rows = {row.label for row in plan.rows}
         known = {(r.row, r.point) for r in store.results if r.row in rows}
         self.resumed = len(known)
@@ -210,27 +150,31 @@ class _Run:
         self.ready: deque[_Job] = deque()
         self.pending: dict[Future[Any], int | _Job] = {}
 
-    def through(self, pool: _Pool) -> None:
+    def through(self, pool: Pool) -> None:
         """Do everything."""
         self._begin()
         breaks = 0
         self.tell()
         try:
             while self.ready or self.unsized or self.pending:
+                lost: BaseException | None = None
                 try:
                     self._fill(pool)
                     done, _ = wait(self.pending, return_when=FIRST_COMPLETED)
-                    brought = [self._take(future) for future in done]
-                except BrokenExecutor:
-                    brought = []
-                if any(brought):
-                    breaks = 0
-                if brought and all(brought):
+                    for future in done:
+                        error = self._take(future)
+                        lost = error or lost
+                        breaks = breaks if error else 0
+                except BrokenExecutor as error:
+                    lost = error
+                if lost is None:
                     continue
                 breaks += 1
-                if breaks >= MOST_BREAKS or not pool.renew():
-                    raise self._died(breaks)
-                self._again()
+                broken = isinstance(lost, BrokenExecutor)
+                if breaks >= MOST_BREAKS or (broken and not pool.renew()):
+                    raise self._died(lost)
+                if broken:
+                    self._again()
         except BaseException:
             self._leave()
             raise
@@ -239,24 +183,13 @@ class _Run:
         """Report how far it has come."""
         if self.report is None:
             return
-        elapsed = time.monotonic() - self.begun
-        left = self.plan.ratings - self.finished
-        remaining = 0.0 if left == 0 else self._remaining(elapsed, left)
+        fresh, left = self.finished - self.resumed, self.plan.ratings - self.finished
+        elapsed, remaining = self.pace.times(fresh, left)
         self.report(
             Progress(
                 self.plan.ratings, self.finished, self.resumed, self.failed, elapsed, remaining
             )
         )
-
-    def _remaining(self, elapsed: float, left: int) -> float | None:
-        """Return the time left at the pace since the first result: starting up counts once."""
-        fresh = self.finished - self.resumed
-        if fresh < 1:
-            return None
-        if self.first is None:
-            self.first = (elapsed, fresh)
-        since, more = elapsed - self.first[0], fresh - self.first[1]
-        return since / more * left if more else elapsed / fresh * left
 
     def _begin(self) -> None:
         """Make ready what waits for nothing: anchors, and metal where there is none."""
@@ -266,7 +199,7 @@ class _Run:
             return
         self.unsized.extend(dict.fromkeys([*(job.row for job in anchors), *self.by_row]))
 
-    def _fill(self, pool: _Pool) -> None:
+    def _fill(self, pool: Pool) -> None:
         while len(self.pending) < pool.room and (self.ready or self.unsized):
             if self.ready:
                 job = self.ready[0]
@@ -288,20 +221,19 @@ class _Run:
             describe=self.describe if job.wanted else None,
         )
 
-    def _take(self, future: Future[Any]) -> bool:
-        """Take one finished future in; False when its worker died."""
-        job = self.pending[future]
-        error = None if future.cancelled() else future.exception()
-        if future.cancelled() or isinstance(error, BrokenExecutor | CancelledError):
-            return False
-        del self.pending[future]
+    def _take(self, future: Future[Any]) -> BaseException | None:
+        """Take one finished future in; put its job back when its worker brought nothing."""
+        job = self.pending.pop(future)
+        error = CancelledError() if future.cancelled() else future.exception()
+        if error is not None:
+            # tasks answer for their own failures: this is the executor's, or a fault of ours
+            self._put_back(job)
+            return error
         if isinstance(job, int):
-            self.metal[job] = Sized(None, reason_of(_plain(error))) if error else future.result()
+            self.metal[job] = future.result()
             self._sized(job)
-            return True
-        done: Done = (
-            given_up(self._task(job), reason_of(_plain(error))) if error else future.result()
-        )
+            return None
+        done: Done = future.result()
         if job.wanted:
             label = self.plan.rows[job.row].label
             self.store.append(Result(label, job.point, done.outcome, done.document))
@@ -314,7 +246,7 @@ class _Run:
         if not self.left[job.chunk]:
             del self.solutions[job.chunk]
         self.tell()
-        return True
+        return None
 
     def _sized(self, row: int) -> None:
         for job in self.by_row[row]:
@@ -329,16 +261,18 @@ class _Run:
                 self.ready.append(job)
 
     def _again(self) -> None:
-        """Put back what was out when the workers died."""
-        for future, job in list(self.pending.items()):
-            if future.done() and not future.cancelled() and future.exception() is None:
+        """Take in or put back all that was out when the workers died."""
+        for future in list(self.pending):
+            if future.done():
                 self._take(future)
-                continue
-            del self.pending[future]
-            if isinstance(job, int):
-                self.unsized.appendleft(job)
             else:
-                self.ready.appendleft(job)
+                self._put_back(self.pending.pop(future))
+
+    def _put_back(self, job: int | _Job) -> None:
+        if isinstance(job, int):
+            self.unsized.appendleft(job)
+        else:
+            self.ready.appendleft(job)
 
     def _leave(self) -> None:
         """On the way out: keep what has been brought back, drop what has not begun."""
@@ -346,16 +280,14 @@ class _Run:
             if not future.cancel() and future.done() and future.exception() is None:
                 self._take(future)
 
-    def _died(self, breaks: int) -> WorkersDiedError:
+    def _died(self, error: BaseException) -> WorkersDiedError:
         left = self.plan.ratings - self.finished
+        words = reason_of(error) if isinstance(error, Exception) else repr(error)
         return WorkersDiedError(
-            f"the workers died {breaks} times in a row, {left} of {self.plan.ratings} ratings "
-            "are left; what was finished is kept, and the same sweep goes on from there"
+            f"the workers brought nothing back {MOST_BREAKS} times in a row, or cannot be started "
+            f"again ({words}); {left} of {self.plan.ratings} ratings are left; what was finished "
+            "is kept, and the same sweep goes on from there"
         )
-
-
-def _plain(error: BaseException | None) -> Exception:
-    return error if isinstance(error, Exception) else RuntimeError(repr(error))
 
 
 def labels(results: Iterable[Result]) -> dict[tuple[str, str], Result]:

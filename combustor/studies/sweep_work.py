@@ -94,12 +94,6 @@ def rate_task(task: Task) -> Done:
     return Done(outcome_of(rated), document, solution if keep else None)
 
 
-def given_up(task: Task, reason: str) -> Done:
-    """Return the record of a task that no worker could bring back."""
-    rated = failed(task.case.point(task.point), _fuel_name(task.case), reason)
-    return Done(outcome_of(rated), None if task.describe is None else task.describe(rated), None)
-
-
 def _rate(task: Task) -> tuple[PointRating, Coupled]:
     case = with_entries(task.case, task.changes) if task.changes else task.case
     if task.sized is None:

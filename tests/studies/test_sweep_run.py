@@ -185,6 +185,13 @@ def test_workers_that_die_again_and_again_end_the_sweep_with_what_is_done_kept(
     assert path.read_bytes() == b"".join(half)
 
 
+def test_a_fault_of_the_callers_is_told_and_no_result(laid, folder):
+    path = folder / "fault.jsonl"
+    with pytest.raises(WorkersDiedError, match=r"ZeroDivisionError.*18 of 18 ratings are left"):
+        carried_out(laid, path, workers=1, describe=lambda rated: 1 / 0)
+    assert lines_of(path) == []
+
+
 def test_a_broken_executor_of_the_callers_ends_the_sweep_plainly(laid, folder, dying):
     with WorkerProcesses(1) as pool, pytest.raises(WorkersDiedError, match="kept"):
         carried_out(laid, folder / "broken.jsonl", executor=pool, describe=dying.always)
