@@ -179,6 +179,7 @@ def _point(
             f"contradicts {given[0]}",
             f"state exactly one of {', '.join(FUEL_BY)}; here are {' and '.join(given)}",
         )
+    yield from _flight(path, point, report)
     inlet = number(point, "inlet_temperature", k.INLET_TEMPERATURE)
     leaving = number(point, "exit_temperature", k.EXIT_TEMPERATURE)
     if inlet is not None and leaving is not None and leaving <= inlet:
@@ -195,29 +196,6 @@ def _point(
         yield from _split_names(path, split, report)
 
 
-def _split_names(
-    path: tuple[str | int, ...], split: Mapping[str, Any], report: Reporter
-) -> Iterator[Problem]:
-    hardware = table(report.document, "hardware")
-    injectors = [row["name"] for _, row in named(hardware or {}, "injectors")]
-    yield from _flight(path, point, report)
-    if not injectors:
-        return
-    for name in split:
-        if name not in injectors:
-            close = difflib.get_close_matches(name, injectors, n=1)
-            yield report.problem(
-                (*path, "fuel_split", name),
-                "no such injector",
-                f"injectors: {', '.join(injectors)}",
-                nearest=close[0] if close else None,
-            )
-
-
-def _targets(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]:
-    targets = table(document, "targets")
-    if "targets" in document and targets is None:
-        return
 def _flight(
     path: tuple[str | int, ...], point: Mapping[str, Any], report: Reporter
 ) -> Iterator[Problem]:
@@ -236,6 +214,28 @@ def _flight(
             yield report.problem((*path, key), "no altitude stated", "add altitude", point[key])
 
 
+def _split_names(
+    path: tuple[str | int, ...], split: Mapping[str, Any], report: Reporter
+) -> Iterator[Problem]:
+    hardware = table(report.document, "hardware")
+    injectors = [row["name"] for _, row in named(hardware or {}, "injectors")]
+    if not injectors:
+        return
+    for name in split:
+        if name not in injectors:
+            close = difflib.get_close_matches(name, injectors, n=1)
+            yield report.problem(
+                (*path, "fuel_split", name),
+                "no such injector",
+                f"injectors: {', '.join(injectors)}",
+                nearest=close[0] if close else None,
+            )
+
+
+def _targets(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]:
+    targets = table(document, "targets")
+    if "targets" in document and targets is None:
+        return
     targets = targets or {}
     names = [row["name"].strip() for _, row in named(document, "points")]
     wanted = targets.get("design_point")
