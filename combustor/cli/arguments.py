@@ -117,6 +117,19 @@ def _rate(command: _Parser) -> None:
     _tables(command)
 
 
+def _sources(command: _Parser) -> None:
+    command.add_argument(
+        "case", metavar="CASE", nargs="?", help="case file; without it, every method there is"
+    )
+    command.add_argument(
+        "--of",
+        metavar="QUANTITY",
+        help="only what stands behind this value: its key in JSON and CSV (nox_ppmvd_15, "
+        "split.penetration_mm), or words of what a method gives",
+    )
+    _tables(command)
+
+
 def _sweep(command: _Parser) -> None:
     command.description = (
         f"{command.description}\nKEY is a dotted path into the case: targets.pressure_loss, "
@@ -152,6 +165,34 @@ def _sweep(command: _Parser) -> None:
         "--picture", metavar="FILE", help="also draw a .png, .svg or .pdf (needs matplotlib)"
     )
     command.add_argument("--ascii", action="store_true", help="plain ASCII tables and plots")
+    _tables(command)
+
+
+def _switch(command: _Parser) -> None:
+    command.add_argument("case", metavar="CASE", help="case file")
+    command.add_argument(
+        "--to", metavar="FUEL", action="append", help="another fuel or blend; may be repeated"
+    )
+    command.add_argument(
+        "--hold",
+        metavar="WHAT",
+        choices=("exit-temperature", "heat", "valve"),
+        default="exit-temperature",
+        help="kept at each point: exit-temperature (default), heat, or valve (same injector and "
+        "pressure ahead of it)",
+    )
+    command.add_argument(
+        "--ladder", metavar="FUEL", help="add this fuel to the case's own by steps"
+    )
+    command.add_argument(
+        "--shares", metavar="START:STOP:COUNT", help="volume percent of it (default 0:100:11)"
+    )
+    command.add_argument(
+        "--injector-ratio",
+        metavar="X",
+        help="pressure ratio of the gas injector at the design point on the present fuel "
+        "(default: fuel.supply_pressure over the inlet, else 1.3)",
+    )
     _tables(command)
 
 
@@ -278,6 +319,15 @@ _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ..
         _sweep,
     ),
     (
+        "switch",
+        "the same metal on other fuels, side by side, with a verdict and the changes each needs",
+        (
+            "combustor switch sized.toml --to natural-gas+30%hydrogen --to hydrogen --to biogas",
+            "combustor switch sized.toml --ladder hydrogen --shares 0:100:11 --hold heat",
+        ),
+        _switch,
+    ),
+    (
         "comply",
         "emissions against the limits that bind, with margins: a pre-check",
         (
@@ -319,6 +369,16 @@ _COMMANDS: tuple[tuple[str, str, tuple[str, ...], Callable[[_Parser], None]], ..
             "combustor rules --template my_permit.toml",
         ),
         _rules,
+    ),
+    (
+        "sources",
+        "every published method and figure, those a case stands on, or those behind one value",
+        (
+            "combustor sources",
+            "combustor sources my.toml --csv sources",
+            "combustor sources my.toml --of penetration_mm",
+        ),
+        _sources,
     ),
 )
 

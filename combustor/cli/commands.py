@@ -128,6 +128,13 @@ def sweep(arguments: argparse.Namespace) -> Answer:
     return sweep_case(arguments)
 
 
+def switch(arguments: argparse.Namespace) -> Answer:
+    """Rate a case on other fuels."""
+    from combustor.cli.switch import switch as switch_case
+
+    return switch_case(arguments)
+
+
 def comply(arguments: argparse.Namespace) -> Answer:
     """Hold a case against emission rules."""
     from combustor.cli.permit import comply as comply_case
@@ -149,14 +156,23 @@ def rules(arguments: argparse.Namespace) -> Answer:
     return show_rules(arguments)
 
 
+def sources(arguments: argparse.Namespace) -> Answer:
+    """Show the methods and where they were read."""
+    from combustor.cli.sources import sources as show_sources
+
+    return show_sources(arguments)
+
+
 _COMMANDS: dict[str, Callable[[argparse.Namespace], Answer]] = {
     "new": new,
     "size": size,
     "rate": rate,
     "sweep": sweep,
+    "switch": switch,
     "comply": comply,
     "flame": flame,
     "convert": convert,
     "fuels": fuels,
     "rules": rules,
+    "sources": sources,
 }

@@ -4,24 +4,18 @@ from __future__ import annotations
 
 import numpy as np
 
-from combustor.airflow.methods import methods_used
-from combustor.base.method import Method
 from combustor.emissions.exhaust import Emissions, from_gas
 from combustor.emissions.profile import dry_15_along
-from combustor.fuel.choose_mechanism import method_of
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.hardware.metal import Hardware
-from combustor.hardware.zone_air import FILM_MIXING, zone_air
+from combustor.hardware.zone_air import zone_air
 from combustor.heat.wall import WallMarch
-from combustor.kinetics.chain import EXCHANGE_WITH_THE_MEAN
-from combustor.kinetics.near_wall import NEAR_WALL
-from combustor.kinetics.primary import RECIRCULATION_TO_STREAMS
-from combustor.rating import settings as set_by
 from combustor.rating.balance import balances_of
 from combustor.rating.couple import Coupled
 from combustor.rating.fire import Fire, layout_of
-from combustor.rating.injectors import INJECTOR_AIR, PREMIXED_UNMIXEDNESS, injectors_of, is_premixed
+from combustor.rating.injectors import injectors_of
+from combustor.rating.methods import methods_of
 from combustor.rating.near_wall import film_shares, quenched_of
 from combustor.rating.operating import Operating
 from combustor.rating.record import (
@@ -89,7 +83,7 @@ def rated(
         },
         near_wall=wall_quench_of(gas, hardware, fire, emissions),
         balances=balances_of(gas, operating, coupled),
-        methods=methods_of(hardware, fuel, coupled),
+        methods=methods_of(hardware, operating, fuel, coupled),
         convergence=coupled.convergence,
         hardware=hardware,
         cautions=fuel.cautions,
@@ -194,31 +188,3 @@ def wall_points(wall: WallMarch) -> list[WallPoint]:
         WallPoint(float(x), wall.side, float(t), float(film), float(cold), float(r), float(c))
         for x, t, film, cold, r, c in rows
     ]
-
-
-def _injector_methods(hardware: Hardware) -> tuple[Method, ...]:
-    used = []
-    if any(is_premixed(injector, hardware) for injector in hardware.injectors):
-        used.append(PREMIXED_UNMIXEDNESS)
-    if len(hardware.injectors) > 1:
-        used.append(INJECTOR_AIR)
-    return tuple(used)
-
-
-def methods_of(hardware: Hardware, fuel: Fuel, coupled: Coupled) -> tuple[Method, ...]:
-    """Return every method this rating stands on, once each."""
-    used = [
-        *methods_used(hardware),
-        FILM_MIXING,
-        NEAR_WALL,
-        RECIRCULATION_TO_STREAMS,
-        EXCHANGE_WITH_THE_MEAN,
-        set_by.UNMIXEDNESS,
-        *_injector_methods(hardware),
-        set_by.RECIRCULATION,
-        set_by.MIXING,
-        set_by.JET_MIXING_LENGTH,
-        method_of(fuel.mechanism),
-        *(method for wall in coupled.walls for method in wall.methods),
-    ]
-    return tuple({method.key: method for method in used}.values())

@@ -89,8 +89,8 @@ class PointRating:
     "elements" and "enthalpy" imbalances as defined for the JSON output. ``near_wall`` says how
     much of the CO leaves the liner beside the wall and how much of it was quenched there.
     ``methods`` are the published methods this result stands on, for the table of sources.
-    ``hardware`` is the metal the split belongs to; ``injectors`` what each of its injectors burns; ``cautions`` are
-    what the fuel asks the reader to mind.
+    ``hardware`` is the metal the split belongs to; ``injectors`` what each of its injectors
+    burns; ``cautions`` are what the fuel asks the reader to mind.
     """
 
     name: str
