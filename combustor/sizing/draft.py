@@ -151,7 +151,7 @@ def swirlers_of(section: Section, liner_height: float, stated: int | None) -> in
 
 def placed(frame: Frame, plans: Mapping[str, RowPlan]) -> tuple[Row, ...]:
     """Return the rows where they stand, to whole millimetres; see `rows.ROW_POSITION`."""
-    primary_end, secondary_end, _ = frame.zone_ends
+    primary_end, secondary_end, liner_end = frame.zone_ends
     third = primary_end + (secondary_end - primary_end) / 3.0
     margin = 2.0 * film_slots.BAND_MARGIN
     found = []
@@ -160,13 +160,15 @@ def placed(frame: Frame, plans: Mapping[str, RowPlan]) -> tuple[Row, ...]:
             continue
         radius = 0.5 * plans[name].hole_diameter
         if name == "primary":
-            place = math.floor(1e3 * (primary_end - radius)) / 1e3
+            place = max(math.floor(1e3 * (primary_end - radius)) / 1e3, 0.5 * primary_end)
         elif name == "dilution":
-            place = math.ceil(1e3 * (secondary_end + radius)) / 1e3
+            place = min(math.ceil(1e3 * (secondary_end + radius)) / 1e3, liner_end - 1e-3)
         else:
             # a quench row opens its zone; behind a primary row there is no room to
             start = third if "primary" in plans else 0.0
             place = math.ceil(1e3 * max(start, primary_end + radius + margin)) / 1e3
+            # in a small liner the margins would carry the row beyond its zone
+            place = min(place, round(0.5 * (primary_end + secondary_end), 4))
         found.append(Row(name, place, plans[name].count))
     return tuple(found)
 

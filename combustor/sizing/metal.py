@@ -21,7 +21,7 @@ from combustor.hardware.metal import (
     Zone,
 )
 from combustor.sizing import swirler as vanes
-from combustor.sizing.drill import nearest_drill
+from combustor.sizing.drill import drill_step, nearest_drill
 from combustor.sizing.sketch import (
     CROSS_FIRE,
     DOME,
@@ -39,6 +39,7 @@ from combustor.sizing.sketch import (
 PILOT_WALL = 1.10
 CROSS_FIRE_TUBES = 2
 SMALL_PACK = 40e-3
+FEW_HOLES = 60
 CROSS_FIRE_STATION = 0.6
 
 
@@ -215,10 +216,10 @@ def _slot(
 
 
 def _leaks(sketch: Sketch, areas: Mapping[str, float], drilled: bool) -> list[Opening]:
-    # a leak is not drilled; a tenth of a square millimetre is how it is written down
+    # a leak is not drilled: four figures are how it is written down
     found = []
     for name, shape in zip(sketch.names(LEAK), sketch.sides, strict=True):
-        size = round(areas[name], 7) if drilled else areas[name]
+        size = _written(areas[name]) if drilled else areas[name]
         found.append(
             Opening(name, "leak", shape.side, sketch.liner_length, 1, size, "orifice", "static")
         )
@@ -232,7 +233,7 @@ def _leaks(sketch: Sketch, areas: Mapping[str, float], drilled: bool) -> list[Op
                 "outer",
                 station,
                 CROSS_FIRE_TUBES,
-                round(one, 7) if drilled else one,
+                _written(one) if drilled else one,
                 "orifice",
                 "static",
             )
@@ -255,8 +256,30 @@ def _injectors(sketch: Sketch, front: Sequence[Opening]) -> tuple[Injector, ...]
 def _many_holes(area: float, drill: float, drilled: bool) -> tuple[int, float, float]:
     """Return count, area of one and diameter of the holes that make up an area."""
     count = max(round(area / (0.25 * math.pi * drill**2)), 1)
-    diameter = drill if drilled else math.sqrt(4.0 * area / (math.pi * count))
+    if not drilled:
+        diameter = math.sqrt(4.0 * area / (math.pi * count))
+    elif count >= FEW_HOLES:
+        diameter = drill
+    else:
+        count, diameter = _nearest_few(area, drill)
     return count, 0.25 * math.pi * diameter**2, diameter
+
+
+def _nearest_few(area: float, drill: float) -> tuple[int, float]:
+    """Return count and drill nearest to an area, among the drills about the wanted one."""
+    step = drill_step(drill)
+    best = (math.inf, 1, drill)
+    for number in (0, -1, 1, -2, 2, -3, 3):
+        diameter = nearest_drill(drill + number * step)
+        one = 0.25 * math.pi * diameter**2
+        count = max(round(area / one), 1)
+        best = min(best, (abs(count * one / area - 1.0), count, diameter), key=lambda t: t[0])
+    return best[1], best[2]
+
+
+def _written(area: float) -> float:
+    """Return an area to four figures, as it is written down [m2]."""
+    return float(f"{area:.4g}")
 
 
 def _liner(sketch: Sketch) -> Passage:

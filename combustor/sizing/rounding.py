@@ -131,6 +131,6 @@ def _moves(
     for group in groups:
         # a hundredth, or one hole of the row with the fewest where that is more
         fewest = min(hardware.opening(name).count for name in group)
-        step = 0.01 if group == front else max(0.01, 1.0 / fewest)
+        step = 0.01 if group == front else min(max(0.01, 1.0 / fewest), 0.5)
         for scale in (1.0 - step, 1.0 + step):
             yield {**areas, **{name: scale * areas[name] for name in group}}

@@ -45,6 +45,7 @@ PENETRATION_ROUND, PENETRATION_RING = 0.33, 0.40
 LEAST_COUNT, LEAST_COUNT_RING = 6, 12
 AIMED_PITCH, AIMED_PITCH_RING, LEAST_PITCH = 2.0, 1.8, 1.5
 WEAK_MOMENTUM_RATIO = 10.0
+SMALLEST_ROW_DRILL = 1.0e-3
 
 
 @dataclass(frozen=True)
@@ -154,7 +155,11 @@ def plan_row(
     least = LEAST_COUNT if section.is_round else LEAST_COUNT_RING
     pitch = AIMED_PITCH if section.is_round else AIMED_PITCH_RING
     most = max(sides * int(perimeter**2 / (sides * pitch**2 * drilled_squared)), least)
+    finest = sides * int(drilled_squared / (sides * SMALLEST_ROW_DRILL**2))
     count, bound = _bounded(free, least, most, sides, pitch)
+    if count > max(finest, sides):
+        count = max(finest, sides)
+        bound = f"holes of {1e3 * SMALLEST_ROW_DRILL:g} mm at least"
     if stated_count is not None:
         count, bound = stated_count, "count stated in the case"
     jet = math.sqrt(squared / count)

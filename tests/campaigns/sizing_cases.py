@@ -118,7 +118,7 @@ title = "random machine"
 layout = "{one["layout"]}"
 cans = {cans}
 {_envelope(one, cans, area)}
-casing_length = {20.0 * math.sqrt(area / cans) + 1.0}
+casing_length = {_length(one, cans, area)}
 inlet_annulus = {_ring(10.0 * entry_gap, entry_gap)}
 exit_annulus = {_ring(leaving_gap / 0.12, leaving_gap)}
 transition_length = {0.0 if one["layout"] == "annular" else 0.5 * math.sqrt(area / cans)}
@@ -141,6 +141,12 @@ wall_temperature = {max(1150.0, one["inlet"] + 300.0)}
 """,
         "random.toml",
     )
+
+
+def _length(one, cans, area):
+    """Return a casing length that never binds: twenty liner heights and a metre."""
+    height = section_for(one, cans, area).casing_height(area)
+    return min(20.0 * height + 1.0, 30.0)
 
 
 def _ring(mean, gap):
