@@ -10,7 +10,7 @@ from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from combustor.api import comply, find_fuel, flame, rate, size
+    from combustor.api import comply, find_fuel, flame, rate, size, switch_fuel
     from combustor.base.errors import (
         CombustorError,
         InfeasibleError,
@@ -43,6 +43,7 @@ _HOMES = {
     "load_case": "combustor.case",
     "rate": "combustor.api",
     "size": "combustor.api",
+    "switch_fuel": "combustor.api",
     "write_case": "combustor.case.write",
 }
 
@@ -64,6 +65,7 @@ __all__ = [
     "load_case",
     "rate",
     "size",
+    "switch_fuel",
     "write_case",
 ]
 

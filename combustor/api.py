@@ -12,6 +12,7 @@ if TYPE_CHECKING:
     from combustor.sizing.record import Design
     from combustor.studies.comply_record import ComplyCheck
     from combustor.studies.flame import Flame
+    from combustor.studies.switch_record import Switch
 
 
 def find_fuel(name: str, mechanism: str | None = None) -> Fuel:
@@ -64,6 +65,17 @@ def rate(
     from combustor.report.frame import RatedCase
 
     return RatedCase.of(rate_case(case, fuel_name=fuel, points=points, mechanism=mechanism))
+
+
+def switch_fuel(case: Case, fuels: Sequence[str], **options: Any) -> Switch:
+    """Rate the metal of a case on other fuels, each with a verdict.
+
+    Takes the options of :func:`combustor.studies.switch.switch_fuel`: ``hold``, ``ladder``,
+    ``injector_ratio``.
+    """
+    from combustor.studies.switch import switch_fuel as switch_case
+
+    return switch_case(case, fuels, **options)
 
 
 def comply(
