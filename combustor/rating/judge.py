@@ -294,20 +294,29 @@ def _notices(
         *RECIRCULATION.notices(recirculation=settings.recirculation),
         *_of_mechanism(rated, fuel),
     ]
-    told = set()
+    # one finding a quantity that left a range, whatever number of methods and places it did so
+    by_quantity: dict[str, list[Notice]] = {}
     for notice in notices:
-        if (notice.method, notice.quantity) in told:
-            continue
-        told.add((notice.method, notice.quantity))
+        by_quantity.setdefault(notice.quantity, []).append(notice)
+    for quantity, left in by_quantity.items():
+        worst = max(left, key=_excess)
+        methods = tuple(dict.fromkeys(notice.method for notice in left))
+        of_methods = "of its method" if len(methods) == 1 else f"of {len(methods)} methods"
         yield Finding(
             "watch",
-            f"{notice.quantity.replace('_', ' ')} outside the range of its method",
-            notice.value,
-            notice.high if notice.value > notice.high else notice.low,
+            f"{quantity.replace('_', ' ')} outside the range {of_methods}",
+            worst.value,
+            worst.high if worst.value > worst.high else worst.low,
             "",
-            str(notice),
-            notice.method,
+            str(worst),
+            ", ".join(methods),
         )
+
+
+def _excess(notice: Notice) -> float:
+    """Return how far a value lies outside its range, over the range."""
+    beyond = max(notice.low - notice.value, notice.value - notice.high)
+    return beyond / max(notice.high - notice.low, 1e-12)
 
 
 def _of_mechanism(rated: PointRating, fuel: Fuel) -> tuple[Notice, ...]:
