@@ -105,8 +105,8 @@ def test_a_bench_area_without_its_pressure_pair_is_asked_about(capsys, tmp_path)
     assert "slot 5" in asked["advice"] and "dilution" not in asked["advice"]
 
 
-def test_static_and_total_pressure_pair_differ_by_the_annulus_head(capsys, tmp_path, known):
-    """The same bench area on the other pair: the slot that counted on total pressure starves."""
+def test_an_area_on_the_total_pressure_passes_more_than_on_the_static(capsys, tmp_path, known):
+    """The same bench area on the other pair gains the head of the annulus, small this far back."""
     text = (DEMOS / "existing_tube.toml").read_text()
     path = tmp_path / "total.toml"
     path.write_text(text.replace('feed = "static" ', 'feed = "total" '))
@@ -116,4 +116,4 @@ def test_static_and_total_pressure_pair_differ_by_the_annulus_head(capsys, tmp_p
         {row["name"]: row["flow_kg_s"] for row in report["points"][0]["split"]}
         for report in (static, total)
     ]
-    assert flows[1]["slot 5"] > 1.005 * flows[0]["slot 5"]
+    assert flows[1]["slot 5"] > flows[0]["slot 5"]
