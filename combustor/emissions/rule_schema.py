@@ -11,7 +11,9 @@ from combustor.case.quantity import Quantity, refusal, word
 from combustor.emissions.emission_unit import EmissionUnit, read_unit
 from combustor.emissions.pollutant import NOT_PREDICTED, POLLUTANTS
 
-Reading = Literal["official text", "copy", "from memory", "derived", "own permit"]
+Reading = Literal["official text", "copy", "older edition", "from memory", "derived", "own permit"]
+UNVERIFIED: tuple[Reading, ...] = ("from memory", "older edition")
+"""Where a figure read so gives no verdict before the user has confirmed it."""
 UnitState = Literal["new", "existing", "modified"]
 Use = Literal["electric", "mechanical-drive", "heat-and-power", "aircraft"]
 Cycle = Literal["simple", "combined"]

@@ -29,7 +29,7 @@ unit = "mg/Nm3@15"
 when = [{{ load = {{ at_least = "70 %" }} }}]   # leave out where it always binds
 averaging = "daily mean"
 rounding = {{ decimals = 0 }}
-reading = "own permit"          # official text, own permit, copy, from memory, derived
+reading = "own permit"          # official text, copy, older edition, from memory, derived
 read_in = "condition ..."
 
 [[limits]]

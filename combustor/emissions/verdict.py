@@ -14,7 +14,7 @@ from combustor.emissions.landing_takeoff import characteristic_factor
 from combustor.emissions.limit import FuelOfLimit, Word, judged, limit_of, rounded
 from combustor.emissions.pollutant import POLLUTANTS
 from combustor.emissions.reference_day import REFERENCE_PRESSURE, AmbientAir, iso_factor
-from combustor.emissions.rule_schema import Row
+from combustor.emissions.rule_schema import UNVERIFIED, Row
 from combustor.emissions.rule_set import RuleSet
 from combustor.emissions.stack import FactMissing, Stack
 
@@ -22,6 +22,7 @@ STATUS = {
     "official text": "read in the official text",
     "own permit": "stated in the user's own file",
     "copy": "read in a copy",
+    "older edition": "of an older edition",
     "from memory": "from memory",
     "derived": "derived",
 }
@@ -154,10 +155,10 @@ def verdict_on(
     if missing:
         reason = f"needs {_listed(missing)}; would be {would_be} if this row binds"
         return replace(judged_row, reason=reason, missing=tuple(sorted(missing)))
-    if row.reading == "from memory" and not is_confirmed:
+    if row.reading in UNVERIFIED and not is_confirmed:
         reason = (
-            f"would be {would_be}; the figure is from memory: read the official text, then "
-            f'[rules] confirmed = ["{rules.name}/{row.row}: where"]'
+            f"would be {would_be}; the figure is {STATUS[row.reading]}: read the official text, "
+            f'then [rules] confirmed = ["{rules.name}/{row.row}: where"]'
         )
         return replace(judged_row, verdict="limit not verified", reason=reason)
     rests_on = binding.answer.used | set_used | _limit_facts(row)

@@ -103,7 +103,7 @@ RULE_SETS = (
     Field("title", "title", "table.title"),
     Field("jurisdiction", "where", "table.jurisdiction"),
     Field("rows", "rows", "", "", decimals=0),
-    Field("memory", "from\nmemory", "", "", decimals=0),
+    Field("memory", "not\nverified", "", "", decimals=0),
     Field("review", "review by"),
 )
 RULE_ROWS = (

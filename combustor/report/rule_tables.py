@@ -7,7 +7,7 @@ from datetime import date
 from typing import Any
 
 from combustor.emissions.facts import shown_value
-from combustor.emissions.rule_schema import Range, Row, When
+from combustor.emissions.rule_schema import UNVERIFIED, Range, Row, When
 from combustor.emissions.rule_set import RuleSet
 from combustor.report import permit_fields as fields
 from combustor.report.document import Block, Facts, Heading, Prose, Table
@@ -51,14 +51,14 @@ def rule_report(rules: RuleSet, today: date) -> tuple[Block, ...]:
         rows,
         below=tuple(_below(r) for r in rows),
     )
-    memory = sum(r.reading == "from memory" for r in table.limits)
+    memory = sum(r.reading in UNVERIFIED for r in table.limits)
     blocks: list[Block] = [Heading(f"{rules.name}: {table.title}"), Facts(tuple(pairs)), limits]
     if memory:
         blocks.append(
             Prose(
-                f"{memory} of {len(rows)} figures are from memory: none of them gives the verdict "
-                "inside before you have read the official text and named the row in [rules] "
-                "confirmed."
+                f"{memory} of {len(rows)} figures are from memory or of an older edition: none of "
+                "them gives the verdict inside before you have read the official text and named "
+                "the row in [rules] confirmed."
             )
         )
     return tuple(blocks)
@@ -123,7 +123,7 @@ def _set(rules: RuleSet, today: date) -> dict[str, Any]:
         "name": rules.name,
         "table": table,
         "rows": len(table.limits),
-        "memory": sum(r.reading == "from memory" for r in table.limits),
+        "memory": sum(r.reading in UNVERIFIED for r in table.limits),
         "review": f"{overdue}{table.review.isoformat()}",
     }
 

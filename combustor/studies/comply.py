@@ -10,6 +10,7 @@ from combustor.base.errors import InputError, Problem
 from combustor.case.schema import Case, Point
 from combustor.emissions.applicability import Binding, rows_binding, set_binds
 from combustor.emissions.facts import Answer, Facts
+from combustor.emissions.hydrogen_reading import apparent_factor
 from combustor.emissions.limit import FuelOfLimit
 from combustor.emissions.reference_day import AmbientAir
 from combustor.emissions.rule_set import RuleSet, find_rules, names
@@ -251,6 +252,13 @@ def _notes(case: Case, facts: Facts, fuel: Fuel, leaning: set[str]) -> tuple[str
     if leaning:
         names = ", ".join(sorted(leaning))
         found.append(f"limits were left out on what was taken so: state {names} in [rules]")
+    hydrogen = facts.values.get("hydrogen_share", 0.0)
+    if hydrogen > 0.0:
+        factor = apparent_factor(fuel.atoms, fuel.lower_heating_value * fuel.molar_mass)
+        found.append(
+            f"with {100 * hydrogen:.4g} % hydrogen by volume every concentration at a reference "
+            f"O2 reads {factor:.3f} times what methane would at the same mass per heat (LHV)"
+        )
     heat = facts.derived.get("heat_input")
     if heat is None and facts.heat_input is not None and facts.heat_input_basis is None:
         found.append("heat input is stated without heat_input_basis, LHV or HHV")

@@ -178,6 +178,14 @@ def test_a_figure_from_memory_gives_no_verdict_before_it_is_confirmed(limit, wou
     assert (found.verdict, found.limit_status) == (would_be, CONFIRMED)
 
 
+def test_a_figure_of_an_older_edition_is_not_verified_either():
+    old = rules(row_text(limit=500, reading="older edition", read_in="edition of 2013"))
+    found = verdict(old)
+    assert found.verdict == "limit not verified" and "older edition" in found.reason
+    copied = rules(row_text(limit=500, reading="copy", read_in="a copy"))
+    assert verdict(copied).verdict == "inside"
+
+
 def test_a_missing_fact_shows_what_it_would_be():
     rule_set = rules(row_text(limit=500, when='[{ load = { above = "70 %" } }]'))
     found = verdict(rule_set, Facts({}))
