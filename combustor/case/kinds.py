@@ -99,7 +99,41 @@ LOSS_COEFFICIENT = Quantity("loss coefficient", "ratio", 0.0, 10.0, "0.4", "0 to
 CASING_RATIO = Quantity("casing area ratio", "ratio", 0.01, 10.0, "0.9", "0.01 to 10")
 ANNULUS_VELOCITY = Quantity("annulus velocity", "velocity", 1.0, 250.0, '"45 m/s"', "1 to 250 m/s")
 VANE_ANGLE = Quantity("vane angle", "angle", 0.0, 85 * DEG, '"45 deg"', "0 to 85 deg")
+CASING_LOSS = Quantity(
+    "heat transfer coefficient", "heat transfer", 0.0, 1e3, '"8 W/m2/K"', "0 to 1000 W/m2/K"
+)
 CONDUCTIVITY = Quantity("conductivity", "conductivity", 1e-2, 500.0, '"26 W/m/K"', "0.01 to 500")
+
+HEATING_VALUE = Quantity(
+    "net heating value", "specific energy", 1e6, 6e7, '"43.1 MJ/kg"', "1 to 60 MJ/kg"
+)
+LATENT_HEAT = Quantity(
+    "latent heat", "specific energy", 1e5, 1.5e6, '"0.32 MJ/kg"', "0.1 to 1.5 MJ/kg"
+)
+LIQUID_HEAT = Quantity(
+    "heat capacity", "specific heat", 1e3, 4e3, '"2.0 kJ/kg/K"', "1 to 4 kJ/kg/K"
+)
+LIQUID_DENSITY = Quantity("density", "density", 500.0, 1100.0, '"804 kg/m3"', "500 to 1100 kg/m3")
+MOLAR_MASS = Quantity("molar mass", "molar mass", 0.03, 0.5, '"159 g/mol"', "30 to 500 g/mol")
+BOILING_POINT = Quantity(
+    "mid-boiling point", "temperature", 300.0, 700.0, '"210 degC"', "300 to 700 K"
+)
+MASS_FRACTION = _fraction("mass fraction", 0.0, 1.0, '"13.8 %" or 0.138', "0 to 100 %")
+VOLUME_FRACTION = _fraction("volume fraction", 0.0, 1.0, '"18 %" or 0.18', "0 to 100 %")
+HYDROGEN_CARBON = Quantity("H/C ratio", "ratio", 0.3, 4.2, "1.91", "0.3 to 4.2 atoms per atom")
+VISCOSITY = Quantity("viscosity", "viscosity", 1e-4, 2e-2, '"1.3 mPa.s"', "0.1 to 20 mPa.s")
+SURFACE_TENSION = Quantity(
+    "surface tension", "surface tension", 1e-2, 8e-2, '"25 mN/m"', "10 to 80 mN/m"
+)
+DROP_SIZE = _length("drop size", 1e-6, 1e-3, '"45 um"', "1 to 1000 um")
+FLOW_NUMBER = Quantity("flow number", "area", 1e-10, 1e-3, '"0.5 mm2"', "1e-4 to 1000 mm2")
+SPRAY_ANGLE = Quantity("spray cone angle", "angle", 0.0, 170 * DEG, '"90 deg"', "0 to 170 deg")
+SPREAD = Quantity("Rosin-Rammler exponent", "ratio", 1.5, 8.0, "3", "1.5 to 8")
+AIR_LIQUID_RATIO = Quantity("air-liquid ratio", "ratio", 0.05, 100.0, "4", "0.05 to 100")
+AIR_VELOCITY = Quantity("air velocity", "velocity", 1.0, 400.0, '"100 m/s"', "1 to 400 m/s")
+EVAPORATION = Quantity(
+    "evaporation constant", "evaporation constant", 1e-9, 1e-5, '"0.8 mm2/s"', "0.001 to 10 mm2/s"
+)
 
 HOURS_A_YEAR = Quantity("hours a year", "ratio", 0.0, 8784.0, "1500", "0 to 8784 h")
 EFFICIENCY = _fraction("efficiency", 0.01, 1.0, '"38 %"', "1 to 100 %")
@@ -118,6 +152,9 @@ InletTemperature = Annotated[float, BeforeValidator(INLET_TEMPERATURE.validate)]
 ExitTemperature = Annotated[float, BeforeValidator(EXIT_TEMPERATURE.validate)]
 FuelTemperature = Annotated[float, BeforeValidator(FUEL_TEMPERATURE.validate)]
 AmbientTemperature = Annotated[float, BeforeValidator(AMBIENT_TEMPERATURE.validate)]
+Altitude = Annotated[float, BeforeValidator(ALTITUDE.validate)]
+FlightMach = Annotated[float, BeforeValidator(FLIGHT_MACH.validate)]
+RamRecovery = Annotated[float, BeforeValidator(RAM_RECOVERY.validate)]
 WallTemperature = Annotated[float, BeforeValidator(WALL_TEMPERATURE.validate)]
 Humidity = Annotated[float, BeforeValidator(HUMIDITY.validate)]
 Load = Annotated[float, BeforeValidator(LOAD.validate)]
@@ -149,9 +186,6 @@ Concentration = Annotated[float, BeforeValidator(CONCENTRATION.validate)]
 Emissivity = Annotated[float, BeforeValidator(EMISSIVITY.validate)]
 MoleFraction = Annotated[float, BeforeValidator(MOLE_FRACTION.validate)]
 Unmixedness = Annotated[float, BeforeValidator(UNMIXEDNESS.validate)]
-Altitude = Annotated[float, BeforeValidator(ALTITUDE.validate)]
-FlightMach = Annotated[float, BeforeValidator(FLIGHT_MACH.validate)]
-RamRecovery = Annotated[float, BeforeValidator(RAM_RECOVERY.validate)]
 EquivalenceRatio = Annotated[float, BeforeValidator(EQUIVALENCE_RATIO.validate)]
 Recirculation = Annotated[float, BeforeValidator(RECIRCULATION.validate)]
 ResidenceTime = Annotated[float, BeforeValidator(RESIDENCE_TIME.validate)]
@@ -161,7 +195,27 @@ LossCoefficient = Annotated[float, BeforeValidator(LOSS_COEFFICIENT.validate)]
 CasingRatio = Annotated[float, BeforeValidator(CASING_RATIO.validate)]
 AnnulusVelocity = Annotated[float, BeforeValidator(ANNULUS_VELOCITY.validate)]
 VaneAngle = Annotated[float, BeforeValidator(VANE_ANGLE.validate)]
+CasingLoss = Annotated[float, BeforeValidator(CASING_LOSS.validate)]
 Conductivity = Annotated[float, BeforeValidator(CONDUCTIVITY.validate)]
+
+HeatingValue = Annotated[float, BeforeValidator(HEATING_VALUE.validate)]
+LatentHeat = Annotated[float, BeforeValidator(LATENT_HEAT.validate)]
+LiquidHeat = Annotated[float, BeforeValidator(LIQUID_HEAT.validate)]
+LiquidDensity = Annotated[float, BeforeValidator(LIQUID_DENSITY.validate)]
+MolarMass = Annotated[float, BeforeValidator(MOLAR_MASS.validate)]
+BoilingPoint = Annotated[float, BeforeValidator(BOILING_POINT.validate)]
+MassFraction = Annotated[float, BeforeValidator(MASS_FRACTION.validate)]
+VolumeFraction = Annotated[float, BeforeValidator(VOLUME_FRACTION.validate)]
+HydrogenCarbon = Annotated[float, BeforeValidator(HYDROGEN_CARBON.validate)]
+Viscosity = Annotated[float, BeforeValidator(VISCOSITY.validate)]
+SurfaceTension = Annotated[float, BeforeValidator(SURFACE_TENSION.validate)]
+DropSize = Annotated[float, BeforeValidator(DROP_SIZE.validate)]
+FlowNumber = Annotated[float, BeforeValidator(FLOW_NUMBER.validate)]
+SprayAngle = Annotated[float, BeforeValidator(SPRAY_ANGLE.validate)]
+Spread = Annotated[float, BeforeValidator(SPREAD.validate)]
+AirLiquidRatio = Annotated[float, BeforeValidator(AIR_LIQUID_RATIO.validate)]
+AirVelocity = Annotated[float, BeforeValidator(AIR_VELOCITY.validate)]
+Evaporation = Annotated[float, BeforeValidator(EVAPORATION.validate)]
 
 Stations = Annotated[tuple[float, ...], BeforeValidator(STATION.validate_list)]
 Diameters = Annotated[tuple[float, ...], BeforeValidator(DIAMETER.validate_list)]

@@ -70,11 +70,57 @@ class Combustor(Table):
     transition_length: k.DuctLength = 0.0
 
 
+class FuelCertificate(Table):
+    """``[fuel.certificate]``: a liquid fuel as its supplier states it.
+
+    Fractions by mass, ``aromatics`` by volume; ``density`` and ``latent_heat`` at 15 degC;
+    ``hydrogen`` or ``hydrogen_carbon_ratio`` (atoms), ``molar_mass`` or ``mid_boiling_point``.
+    """
+
+    net_heating_value: k.HeatingValue
+    density: k.LiquidDensity
+    hydrogen: k.MassFraction | None = None
+    hydrogen_carbon_ratio: k.HydrogenCarbon | None = None
+    oxygen: k.MassFraction = 0.0
+    nitrogen: k.MassFraction = 0.0
+    sulfur: k.MassFraction = 0.0
+    molar_mass: k.MolarMass | None = None
+    mid_boiling_point: k.BoilingPoint | None = None
+    latent_heat: k.LatentHeat | None = None
+    aromatics: k.VolumeFraction | None = None
+    heat_capacity: k.LiquidHeat | None = None
+    viscosity: k.Viscosity | None = None
+    surface_tension: k.SurfaceTension | None = None
+
+
+class Atomiser(Table):
+    """``[fuel.atomiser]``: how a liquid fuel is broken up; left alone by gases.
+
+    ``drop_size`` (Sauter mean, measured or wanted) stands in for any correlation. Air velocity
+    and air-liquid ratio left out are those of the swirler; ``count`` atomisers share the fuel.
+    """
+
+    kind: Literal["pressure-swirl", "prefilming-airblast"] = "prefilming-airblast"
+    count: k.Holes | None = None
+    drop_size: k.DropSize | None = None
+    spread: k.Spread = 3.0
+    evaporation_constant: k.Evaporation | None = None
+    flow_number: k.FlowNumber | None = None
+    orifice_diameter: k.HoleDiameter | None = None
+    spray_angle: k.SprayAngle = math.pi / 2.0
+    prefilmer_diameter: k.HoleDiameter | None = None
+    hydraulic_diameter: k.HoleDiameter | None = None
+    air_velocity: k.AirVelocity | None = None
+    air_liquid_ratio: k.AirLiquidRatio | None = None
+
+
 class Fuel(Table):
-    """``[fuel]``: catalogue name or blend, or mole fractions; K, Pa."""
+    """``[fuel]``: catalogue name or blend, mole fractions, or a liquid's certificate; K, Pa."""
 
     name: k.Name | None = None
     composition: dict[str, k.MoleFraction] | None = None
+    certificate: FuelCertificate | None = None
+    atomiser: Atomiser | None = None
     temperature: k.FuelTemperature = 288.15
     supply_pressure: k.SupplyPressure | None = None
 
@@ -107,6 +153,21 @@ class Point(Table):
     ambient_pressure: k.AmbientPressure | None = None
     cycle_mode: k.Text | None = None
     fuel_split: dict[str, k.Share] | None = None
+    altitude: k.Altitude | None = None
+    flight_mach: k.FlightMach = 0.0
+    ram_recovery: k.RamRecovery = 1.0
+
+    @model_validator(mode="before")
+    @classmethod
+    def _from_flight(cls, stated: Any) -> Any:
+        return with_inlet(stated) if isinstance(stated, Mapping) else stated
+
+    @model_serializer(mode="wrap")
+    def _as_stated(self, serialise: SerializerFunctionWrapHandler) -> dict[str, Any]:
+        # what follows from the flight is not stated again, nor a flight that there is not
+        whole: dict[str, Any] = serialise(self)
+        left_out = FLIGHT_KEYS if self.altitude is None else INLET_KEYS
+        return {key: value for key, value in whole.items() if key not in left_out}
 
 
 class ZoneEquivalenceRatios(Table):
@@ -153,21 +214,6 @@ class Targets(Table):
     swirler_hub_diameter: k.HubDiameter | None = None
     swirlers: k.Holes | None = None
     pilot_fuel: k.Fraction = 0.10
-    altitude: k.Altitude | None = None
-    flight_mach: k.FlightMach = 0.0
-    ram_recovery: k.RamRecovery = 1.0
-
-    @model_validator(mode="before")
-    @classmethod
-    def _from_flight(cls, stated: Any) -> Any:
-        return with_inlet(stated) if isinstance(stated, Mapping) else stated
-
-    @model_serializer(mode="wrap")
-    def _as_stated(self, serialise: SerializerFunctionWrapHandler) -> dict[str, Any]:
-        # what follows from the flight is not stated again, nor a flight that there is not
-        whole: dict[str, Any] = serialise(self)
-        left_out = FLIGHT_KEYS if self.altitude is None else INLET_KEYS
-        return {key: value for key, value in whole.items() if key not in left_out}
     premixer_time: k.ResidenceTime = 1.0e-3
     hole_edge: Literal["plain", "plunged"] = "plain"
     primary_holes: k.Holes | None = None
@@ -193,7 +239,8 @@ class Model(Table):
 
     ``unmixedness``: standard deviation of mixture fraction over its mean; ``recirculation``:
     recirculated mass per fresh mass; ``mixing``: exchange rate, 1/s; ``primary_jet_share``:
-    share of the primary row's air that burns in the primary zone.
+    share of the primary row's air that burns in the primary zone; ``casing_loss_coefficient``:
+    casing to its surroundings at 15 degC, W/m2/K of casing, no loss where left out.
     """
 
     unmixedness: k.Unmixedness | None = None
@@ -204,6 +251,7 @@ class Model(Table):
     cells: k.Cells | None = None
     wall_stations: k.Cells | None = None
     primary_jet_share: k.Share = 0.5
+    casing_loss_coefficient: k.CasingLoss | None = None
 
 
 class Scatter(Table):

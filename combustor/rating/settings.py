@@ -64,6 +64,8 @@ class Settings:
         Share of the primary-row air that turns upstream.
     wall_stations : int
         Stations of the wall march a side.
+    casing_loss_coefficient : float or None
+        Casing to its surroundings, W/m2/K; None loses nothing, as under a good lagging.
     tolerance : float
         Largest change of any opening's flow over the inlet air between two passes.
     temperature_tolerance : float
@@ -83,6 +85,7 @@ class Settings:
     transition_cells: int = 1
     primary_jet_share: float = 0.5
     wall_stations: int = 60
+    casing_loss_coefficient: float | None = None
     tolerance: float = 1e-5
     temperature_tolerance: float = 0.05
     passes: int = 25
@@ -106,5 +109,6 @@ def settings_of(model: Model) -> Settings:
         dilution_cells=default.dilution_cells if cells is None else cells,
         primary_jet_share=model.primary_jet_share,
         wall_stations=int(stated(model.wall_stations, default.wall_stations)),
+        casing_loss_coefficient=model.casing_loss_coefficient,
         is_unmixedness_stated=model.unmixedness is not None,
     )

@@ -10,7 +10,8 @@ from combustor.airflow.result import AirSplit, AnnulusHeat
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.hardware.metal import Hardware, LinerWall
-from combustor.heat.sides import AnnulusSide, Film, GasSide, Radiation
+from combustor.heat.gas_radiation import luminosity_hydrogen
+from combustor.heat.sides import AnnulusSide, Casing, Film, GasSide, Radiation
 from combustor.heat.wall import WallMarch, march
 from combustor.rating.fire import Fire, chain_pressure
 from combustor.rating.operating import Operating
@@ -18,8 +19,10 @@ from combustor.rating.settings import Settings
 
 
 def radiation_of(fuel: Fuel) -> Radiation:
-    """Return how this fuel's flame radiates."""
-    return Radiation("grey-gas")
+    """Return how this fuel's flame radiates: clear for gases, luminous for liquids."""
+    if fuel.liquid is None:
+        return Radiation("grey-gas")
+    return Radiation("luminous", luminosity_hydrogen(fuel.hydrogen_mass_fraction))
 
 
 def walls_of(
@@ -42,6 +45,7 @@ def walls_of(
             radiation_of(fuel),
             settings.wall_stations,
             hardware.cans,
+            Casing(settings.casing_loss_coefficient),
         )
         for wall in hardware.walls
     )

@@ -151,6 +151,16 @@ def test_quenched_gas_is_part_of_what_flows_beside_the_wall(bench, solved):
     assert 0.0 < quench.quenched < quench.share < 1.0
 
 
+def test_a_casing_that_loses_heat_is_in_the_balance(bench):
+    lagged = bench.rated("full")
+    bare = bench.rate("full", settings={"casing_loss_coefficient": 20.0})
+    assert bare.balances["enthalpy"] <= 1e-6
+    # the same exit temperature takes the fuel for what the casing loses besides
+    more = bare.fuel_flow / lagged.fuel_flow - 1.0
+    assert 1e-4 < more < 5e-3
+    assert "casing-balance" in {method.key for method in bare.methods}
+
+
 @pytest.mark.parametrize("load", ["full", "idle"])
 def test_wall_heat_goes_to_the_air_and_the_casing(bench, load):
     operating = operating_of(bench.case, bench.point(load), bench.fuel, bench.gas)
