@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -10,7 +11,9 @@ from numpy.typing import NDArray
 from combustor.base.method import Method
 from combustor.fuel.gas import Gas, GasState
 from combustor.kinetics.branch import hold
-from combustor.kinetics.continuation import descend, follow
+from combustor.kinetics.burning import burning_temperature, mean_temperature
+from combustor.kinetics.continuation import STEP_ITERATIONS, at_rate_of, descend, follow
+from combustor.kinetics.newton import newton
 from combustor.kinetics.primary import PrimaryZone, distribution_of, fresh_bundle, primary_zone
 from combustor.kinetics.stirred import stirred_zone
 from combustor.kinetics.unmixedness import Distribution
@@ -33,6 +36,7 @@ FINEST_RESIDENCE_RATIO = 0.998
 BOLDEST_FUEL_RATIO = 0.9
 FINEST_FUEL_RATIO = 0.99
 LEAST_FUEL_SHARE = 0.01  # of the operating fuel flow: where a search for blow-out stops
+NEIGHBOUR_STEPS = 4  # from the fuel a neighbour goes out with upwards, before starting afresh
 RICHEST_FUEL_RATIO = 12.0  # of the operating fuel flow: where a search for rich blow-out stops
 
 
@@ -105,11 +109,17 @@ class FuelBlowout:
         False where the zone still burnt with the least fuel tried, 1 % of what was given.
     iterations : int
         Newton iterations spent.
+    share : float
+        That fuel over what was given.
+    state : ZoneState or None
+        The last burning state, for a neighbouring search to start from.
     """
 
     fuel_flow: float
     reached: bool
     iterations: int
+    share: float = 1.0
+    state: ZoneState | None = None
 
 
 def blowout_fuel_flow(
@@ -120,6 +130,7 @@ def blowout_fuel_flow(
     warm: ZoneState | None = None,
     boldest: float = BOLDEST_FUEL_RATIO,
     finest: float = FINEST_FUEL_RATIO,
+    near: FuelBlowout | None = None,
 ) -> FuelBlowout | None:
     """Reduce the fuel of a burning primary zone until it blows out.
 
@@ -136,6 +147,9 @@ def blowout_fuel_flow(
         Its solution, to save time.
     boldest, finest : float
         Fuel of one step over that of the step before, at the start and where the branch ends.
+    near : FuelBlowout, optional
+        Of a neighbouring zone: the search begins where that one ended, if this one burns there
+        too, and ends within the same step of blow-out.
 
     Returns
     -------
@@ -148,15 +162,48 @@ def blowout_fuel_flow(
         fresh = fresh_bundle(gas, leaner, distribution_of(leaner))
         return primary_zone(gas, pressure, leaner, fresh, heat_loss * share)
 
-    operating = hold(zone_at(1.0), warm)
-    if operating.status != "burning":
-        return None
-    followed = descend(zone_at, operating.state, 1.0, LEAST_FUEL_SHARE, boldest, finest)
+    begun = None if near is None else _where_it_ended(zone_at, near, finest)
+    if begun is not None:
+        state, start, spent = begun
+        boldest = finest
+    else:
+        operating = hold(zone_at(1.0), warm)
+        if operating.status != "burning":
+            return None
+        state, start, spent = operating.state, 1.0, operating.iterations
+    followed = descend(zone_at, state, start, LEAST_FUEL_SHARE, boldest, finest)
     return FuelBlowout(
         fuel_flow=primary.fuel.mass_flow * followed.factor,
         reached=followed.factor > LEAST_FUEL_SHARE,
-        iterations=operating.iterations + followed.iterations,
+        iterations=spent + followed.iterations,
+        share=followed.factor,
+        state=followed.state,
     )
+
+
+def _where_it_ended(
+    zone_at: Callable[[float], Zone], near: FuelBlowout, finest: float
+) -> tuple[ZoneState, float, int] | None:
+    """Return a burning state with about the fuel a neighbour goes out with; None if none is near.
+
+    Streams that have gone out in the neighbour are taken to be out here as well.
+    """
+    if near.state is None or not near.reached:
+        return None
+    spent = 0
+    for steps in range(NEIGHBOUR_STEPS):
+        share = near.share / finest**steps
+        if share >= 1.0:
+            break
+        zone = zone_at(share)
+        if zone.streams != len(near.state.moles):
+            break
+        outcome = newton(zone, at_rate_of(zone, near.state), STEP_ITERATIONS)
+        spent += outcome.iterations
+        steady = outcome.converged and outcome.stable
+        if steady and mean_temperature(zone, outcome.state) > burning_temperature(zone):
+            return outcome.state, share, spent
+    return None
 
 
 def rich_blowout_fuel_flow(

@@ -14,6 +14,7 @@ from combustor.fuel.record import Fuel
 from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.heat.wall import WallMarch
 from combustor.kinetics.chain import Chain
+from combustor.kinetics.extinction import FuelBlowout
 from combustor.rating.fire import Fire, layout_of, light, liner_gas_of
 from combustor.rating.fuel_demand import FuelDemand
 from combustor.rating.near_wall import film_shares
@@ -43,6 +44,8 @@ class Coupled:
         two passes.
     fuel_correction : float
         Fuel flow over that of complete combustion to the exit temperature.
+    blowout : FuelBlowout or None
+        The search for lean blow-out, where one was made.
     between : bool
         No state has the exit temperature asked for: it jumps across it where one stream of the
         primary zone goes out.
@@ -55,6 +58,7 @@ class Coupled:
     walls: tuple[WallMarch, ...]
     convergence: Convergence
     fuel_correction: float = 1.0
+    blowout: FuelBlowout | None = None
     between: bool = False
     streams: int | None = None
 

@@ -12,6 +12,7 @@ from combustor.fuel.record import Fuel
 from combustor.hardware.metal import Hardware
 from combustor.kinetics.extinction import (
     STIRRED_BLOWOUT,
+    FuelBlowout,
     blowout_fuel_flow,
     blowout_residence_time,
     rich_blowout_fuel_flow,
@@ -66,11 +67,15 @@ NOTHING: Mapping[str, float | None] = dict.fromkeys(KEYS)
 
 @dataclass(frozen=True)
 class Operability:
-    """What was judged of one point: values by key, findings, and the methods behind them."""
+    """What was judged of one point: values by key, findings, and the methods behind them.
+
+    ``blowout`` is the search for lean blow-out, for a neighbour's to start from.
+    """
 
     values: Mapping[str, float | None] = field(default_factory=lambda: NOTHING)
     findings: tuple[Finding, ...] = ()
     methods: tuple[Method, ...] = ()
+    blowout: FuelBlowout | None = None
 
 
 def operability_of(
@@ -81,6 +86,7 @@ def operability_of(
     coupled: Coupled,
     settings: Settings,
     rated: PointRating,
+    near: FuelBlowout | None = None,
 ) -> Operability:
     """Judge a burning point.
 
@@ -88,6 +94,8 @@ def operability_of(
     ----------
     rated : PointRating
         The point, emissions and injectors known.
+    near : FuelBlowout, optional
+        Of a neighbouring point, to save time.
     """
     fire = coupled.fire
     primary = primary_of(
@@ -95,7 +103,8 @@ def operability_of(
     )
     zone = next(zone for zone in rated.zones if zone.name == "primary")
     values: dict[str, float | None] = dict(NOTHING)
-    values |= _blowout(gas, operating, coupled, primary, zone.equivalence_ratio)
+    found = _lean_limit(gas, coupled, primary, near)
+    values |= _blowout(operating, coupled, found, zone.equivalence_ratio)
     values |= _mixed_zone(gas, coupled, primary, zone.equivalence_ratio, zone.residence_time or 0.0)
     values |= _correlated(operating, hardware, fuel)
     values |= _efficiency_loss(fuel, rated)
@@ -111,7 +120,7 @@ def operability_of(
         values = _worse(values, judged.values)
         findings += judged.findings
         methods += judged.methods
-    return Operability(values, tuple(findings), tuple(methods))
+    return Operability(values, tuple(findings), tuple(methods), found)
 
 
 def deceleration(points: Sequence[PointRating]) -> tuple[Finding, ...]:
@@ -150,31 +159,34 @@ def deceleration(points: Sequence[PointRating]) -> tuple[Finding, ...]:
     )
 
 
-def _blowout(
-    gas: Gas,
-    operating: Operating,
-    coupled: Coupled,
-    primary: PrimaryZone,
-    equivalence_ratio: float,
-) -> dict[str, float | None]:
+def _lean_limit(
+    gas: Gas, coupled: Coupled, primary: PrimaryZone, near: FuelBlowout | None
+) -> FuelBlowout | None:
     fire = coupled.fire
-    loss = heat_losses_of(fire, coupled.walls)[0]
-    found = blowout_fuel_flow(
+    return blowout_fuel_flow(
         gas,
         chain_pressure(coupled.split),
         primary,
-        loss,
+        heat_losses_of(fire, coupled.walls)[0],
         fire.chain.states[0],
         BOLDEST,
         FINEST,
+        near,
     )
+
+
+def _blowout(
+    operating: Operating,
+    coupled: Coupled,
+    found: FuelBlowout | None,
+    equivalence_ratio: float,
+) -> dict[str, float | None]:
     if found is None or not found.reached:
         return {}
-    share = found.fuel_flow / primary.fuel.mass_flow
     return {
-        "blowout_fuel_air_ratio": share * fire.fuel_flow / operating.dry_air_flow,
-        "blowout_margin_percent": 100.0 * (1.0 - share),
-        "blowout_primary_equivalence_ratio": share * equivalence_ratio,
+        "blowout_fuel_air_ratio": found.share * coupled.fire.fuel_flow / operating.dry_air_flow,
+        "blowout_margin_percent": 100.0 * (1.0 - found.share),
+        "blowout_primary_equivalence_ratio": found.share * equivalence_ratio,
     }
 
 

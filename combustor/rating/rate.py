@@ -128,7 +128,9 @@ def rate_near(
         return replace(record, findings=findings), coupled
     if record.status != "burning":
         return replace(record, findings=findings, operability=NOTHING), coupled
-    judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record)
+    known = None if near is None else near.blowout
+    judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record, known)
+    coupled = replace(coupled, blowout=judged.blowout)
     methods = {method.key: method for method in (*record.methods, *judged.methods)}
     record = replace(
         record,

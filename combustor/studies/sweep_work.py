@@ -112,6 +112,7 @@ def _rate(task: Task) -> tuple[PointRating, Coupled]:
         hardware,
         settings_of(case.model),
         near,
+        operability=True,
     )
 
 
