@@ -22,7 +22,7 @@ from combustor.rating.rate import rate_case
 from combustor.rating.record import PointRating, Ratings
 from combustor.studies.close_gap import gaps_of
 from combustor.studies.comply_record import ComplyCheck, Standing
-from combustor.studies.landing_cycle import cycle_of
+from combustor.studies.landing_cycle import CYCLE, cycle_of
 from combustor.studies.machine_facts import facts_at, facts_of, fuel_sulfur
 
 
@@ -79,7 +79,7 @@ def comply(
             continue
         standings.append(_set_standing(rule_set, answer))
         by_cycle = any(row.emission_unit.kind == "thrust" for row in rule_set.table.limits)
-        judged = [cycle] if by_cycle else subjects
+        judged = [*subjects, cycle] if by_cycle else subjects
         made, places, by_derived = _of_set(rule_set, answer, judged, confirmed, own)
         verdicts += made
         standings += places
@@ -116,6 +116,8 @@ def _of_set(
     seen: dict[tuple[str, bool | None, str], list[str]] = {}
     for subject in subjects:
         for binding in rows_binding(rules, subject.facts):
+            if (binding.row.emission_unit.kind == "thrust") != (subject.name == CYCLE):
+                continue
             binds, why = binding.answer.holds, _why(binding)
             if binds and answer.holds is None:
                 binds, why = None, _needs(answer)

@@ -257,6 +257,19 @@ def test_landing_and_take_off_totals(ratings):
     assert nox.verdict in ("inside", "too close to call", "outside")
 
 
+def test_a_file_may_hold_limits_of_points_and_of_the_cycle(ratings, tmp_path):
+    path = tmp_path / "both.toml"
+    last = PERMIT.split("\n\n")[-1]
+    cycle = last.replace('"so2"', '"cycle"').replace('"SO2"', '"CO"')
+    cycle = cycle.replace('"mg/Nm3@15"', '"g/kN"').replace("limit = 12", "limit = 5000")
+    path.write_text(f"{PERMIT}\n{cycle}".replace('"mechanical-drive"', '"aircraft"'))
+    facts = AIRCRAFT.replace("icao-annex-16", str(path), 1).split("confirmed")[0]
+    case = case_of(f'{facts}heat_input = "13 MW"\nheat_input_basis = "LHV"', cycle_head())
+    check = comply(case, ratings=ratings)
+    assert {v.row for v in check.verdicts if v.point == CYCLE} == {"cycle"}
+    assert "nox-hourly-mass" in {v.row for v in check.verdicts if v.point == "idle"}
+
+
 @pytest.mark.parametrize(
     ("old", "new", "said"),
     [
