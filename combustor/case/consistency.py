@@ -105,21 +105,42 @@ def _fuel(document: Mapping[str, Any], report: Reporter) -> Iterator[Problem]:
     fuel = table(document, "fuel")
     if fuel is None:
         return
-    has_name, has_composition = stated(fuel, "name"), stated(fuel, "composition")
-    if has_name and has_composition:
+    ways = ("name", "composition", "certificate")
+    given = [key for key in ways if stated(fuel, key)]
+    for key in given[1:]:
         yield report.problem(
-            ("fuel", "composition"), "contradicts fuel.name", "state name or composition, not both"
+            ("fuel", key),
+            f"contradicts fuel.{given[0]}",
+            "state name, composition or certificate, only one of them",
         )
-    meant = {("fuel", "name"), ("fuel", "composition")} & report.misspelt
-    if not has_name and not has_composition and not meant:
+    if not given and not {("fuel", key) for key in ways} & report.misspelt:
         yield report.problem(
             ("fuel",),
             "no fuel stated",
-            'add name = "natural-gas" or composition = { CH4 = "96 %", N2 = "4 %" }',
+            'add name = "natural-gas", composition = { CH4 = "96 %", N2 = "4 %" }, or a table '
+            "[fuel.certificate] for a liquid",
         )
+    yield from _certificate(fuel, report)
     composition = table(fuel, "composition")
     if composition is not None:
         yield from _sum(("fuel", "composition"), composition, k.MOLE_FRACTION, report)
+
+
+def _certificate(fuel: Mapping[str, Any], report: Reporter) -> Iterator[Problem]:
+    certificate = table(fuel, "certificate")
+    if certificate is None:
+        return
+    for first, second in (
+        ("hydrogen", "hydrogen_carbon_ratio"),
+        ("molar_mass", "mid_boiling_point"),
+    ):
+        path = ("fuel", "certificate", second)
+        both = [key for key in (first, second) if stated(certificate, key)]
+        if len(both) == 2:
+            yield report.problem(path, f"contradicts {first}", f"state {first} or {second}")
+        misspelt = {("fuel", "certificate", key) for key in (first, second)} & report.misspelt
+        if not both and not misspelt:
+            yield report.problem(path[:2], f"neither {first} nor {second}", "state one of them")
 
 
 def _sum(

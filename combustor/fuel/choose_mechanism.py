@@ -12,6 +12,7 @@ import cantera as ct
 
 from combustor.base.errors import InputError, Problem
 from combustor.base.method import Method, Reading
+from combustor.fuel.lumped import parted
 from combustor.fuel.mechanism import locate, shipped_folder
 
 
@@ -33,6 +34,8 @@ class Mechanism:
     species_cautions : mapping of str to str
         Said when the fuel holds more than ``minor_share`` of that species.
     minor_share : float
+    adds : frozenset of str
+        Species it does not hold that are added to it, lumped, with a fuel that has them.
     """
 
     name: str
@@ -49,6 +52,12 @@ class Mechanism:
     species_cautions: Mapping[str, str] = field(default_factory=dict)
     minor_share: float = 0.0
     validity: Mapping[str, tuple[float, float]] = field(default_factory=dict)
+    adds: frozenset[str] = frozenset()
+
+    @property
+    def fuels(self) -> frozenset[str]:
+        """Every species it may be given as fuel, added ones included."""
+        return self.burns | self.adds
 
     @property
     def path(self) -> Path:
@@ -74,7 +83,7 @@ class Mechanism:
     def cautions_for(self, composition: Mapping[str, float]) -> tuple[str, ...]:
         """Return what must be said when this mechanism burns that mixture (mole fractions)."""
         shares = {species.upper(): share for species, share in composition.items()}
-        outside = sorted(set(shares) - self.burns - self.carries)
+        outside = sorted(set(shares) - self.fuels - self.carries)
         said = list(self.cautions)
         if outside:
             said.append(f"{self.name} was not made to burn {', '.join(outside)}")
@@ -92,13 +101,15 @@ def catalogue() -> tuple[Mechanism, ...]:
     return tuple(_mechanism(row) for row in tomllib.loads(text)["mechanism"])
 
 
-def choose(compositions: Iterable[Mapping[str, float]]) -> Mechanism:
+def choose(compositions: Iterable[Mapping[str, float]], adding: bool = False) -> Mechanism:
     """Return the first mechanism that burns every one of these mixtures.
 
     Parameters
     ----------
     compositions : iterable of mapping
         Mole fractions of each fuel; several where one comparison must use one mechanism.
+    adding : bool
+        Whether lumped species of liquid fuels must be added to it.
 
     Raises
     ------
@@ -111,9 +122,9 @@ def choose(compositions: Iterable[Mapping[str, float]]) -> Mechanism:
         for species, share in composition.items()
         if share > 0.0
     }
-    known = catalogue()
+    known = tuple(m for m in catalogue() if m.adds or not adding)
     for mechanism in known:
-        if wanted <= mechanism.burns | mechanism.carries:
+        if wanted <= mechanism.fuels | mechanism.carries:
             return mechanism
     raise InputError(_refusal(wanted, known))
 
@@ -132,7 +143,7 @@ def method_of(mechanism: str | Path) -> Method:
     Its ``notices`` take ``pressure`` (Pa) and ``temperature`` (K) where the catalogue states a
     range for them (see ``validity``).
     """
-    path = Path(mechanism)
+    path = Path(parted(mechanism)[0])
     known = known_as(path)
     if known is not None:
         return known.method
@@ -146,7 +157,7 @@ def method_of(mechanism: str | Path) -> Method:
 
 
 def _refusal(wanted: set[str], known: tuple[Mechanism, ...]) -> Problem:
-    burnable = frozenset[str]().union(*(m.burns | m.carries for m in known))
+    burnable = frozenset[str]().union(*(m.fuels | m.carries for m in known))
     nowhere = sorted(wanted - burnable)
     if nowhere:
         return Problem(
@@ -155,7 +166,7 @@ def _refusal(wanted: set[str], known: tuple[Mechanism, ...]) -> Problem:
             allowed=f"use {', '.join(sorted(burnable))}, or name a Cantera mechanism of your own "
             "that holds it",
         )
-    lacking = [f"{m.name} lacks {', '.join(sorted(wanted - m.burns - m.carries))}" for m in known]
+    lacking = [f"{m.name} lacks {', '.join(sorted(wanted - m.fuels - m.carries))}" for m in known]
     return Problem(
         f"no mechanism here burns {', '.join(sorted(wanted))} together ({'; '.join(lacking)})",
         key="composition",
@@ -169,6 +180,7 @@ def _mechanism(row: dict[str, Any]) -> Mechanism:
         file=row["file"],
         origin=row["from"],
         burns=frozenset(row["burns"]),
+        adds=frozenset(row.get("adds", ())),
         carries=frozenset(row["carries"]),
         nitrogen_chemistry=row["nitrogen_chemistry"],
         source=row["source"],

@@ -17,11 +17,15 @@ class Entry:
     ----------
     name : str
     composition : mapping of str to float
-        Mole fractions.
+        Mole fractions; empty where a certificate stands in its place.
     source, reading : str
         Where the composition comes from and where that was really read.
     cautions : tuple of str
     synonyms : tuple of str
+    certificate : mapping or None
+        Of a liquid fuel, by the keys of `combustor.fuel.certificate.Certificate`.
+    liquid : mapping or None
+        Of a liquid that is a pure substance, by the keys of `combustor.fuel.record.Liquid`.
     """
 
     name: str
@@ -30,6 +34,8 @@ class Entry:
     reading: str
     cautions: tuple[str, ...] = ()
     synonyms: tuple[str, ...] = ()
+    certificate: Mapping[str, float] | None = None
+    liquid: Mapping[str, float] | None = None
 
 
 @cache
@@ -39,11 +45,13 @@ def entries() -> tuple[Entry, ...]:
     return tuple(
         Entry(
             name=name,
-            composition=row["composition"],
+            composition=row.get("composition", {}),
             source=row["source"],
             reading=row["reading"],
             cautions=tuple(row.get("cautions", ())),
             synonyms=tuple(row.get("synonyms", ())),
+            certificate=row.get("certificate"),
+            liquid=row.get("liquid"),
         )
         for name, row in tomllib.loads(text).items()
     )

@@ -19,6 +19,7 @@ from numpy.typing import NDArray
 
 from combustor.base.errors import InputError, NotConvergedError, Problem
 from combustor.base.method import Method
+from combustor.fuel.lumped import parted, with_lumps
 from combustor.fuel.mechanism import locate
 from combustor.fuel.rates import POLYNOMIAL_GAP, Rates
 
@@ -96,18 +97,22 @@ class Gas:
             dtype=float,
         )
         self._index = {name: place for place, name in enumerate(self.species_names)}
-        self._folded = {name.upper(): place for place, name in enumerate(self.species_names)}
+        # "C3H6,propylene" answers to "C3H6" as well, where that says enough
+        short = {name.partition(",")[0].upper(): i for i, name in enumerate(self.species_names)}
+        full = {name.upper(): place for place, name in enumerate(self.species_names)}
+        self._folded = {**short, **full}
 
     @classmethod
     def load(cls, mechanism: str | Path) -> Gas:
-        """Read a mechanism by path, shipped name or Cantera's own name.
+        """Read a mechanism by path, shipped name or Cantera's own name, lumped species included.
 
         Raises
         ------
         InputError
             No such file, a file Cantera cannot read, or one that is not an ideal gas.
         """
-        path = locate(mechanism)
+        file, lumps = parted(mechanism)
+        path = locate(file)
         try:
             solution = ct.Solution(str(path), transport_model=None)
         except (ct.CanteraError, RuntimeError, ValueError, UnicodeDecodeError) as error:
@@ -129,6 +134,8 @@ class Gas:
                     allowed="give a Cantera YAML file whose first phase is an ideal gas",
                 )
             )
+        if lumps:
+            return cls(with_lumps(solution, lumps), str(mechanism))
         return cls(solution, str(path))
 
     # -- composition -------------------------------------------------------------------------
@@ -155,7 +162,7 @@ class Gas:
                     "species not in the mechanism",
                     key="composition",
                     value=species,
-                    allowed=f"{Path(self.mechanism).name} has {self.n_species} species; "
+                    allowed=f"{Path(parted(self.mechanism)[0]).name} has {self.n_species} species; "
                     "choose another mechanism or another fuel",
                 )
             ) from None

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import difflib
+import hashlib
 from pathlib import Path
 
 import cantera as ct
 
 from combustor.base.errors import InputError, Problem
+from combustor.fuel.lumped import parted
 
 SUFFIXES = (".yaml", ".yml")
 
@@ -33,6 +35,13 @@ def shipped_names() -> tuple[str, ...]:
     if not folder.is_dir():
         return ()
     return tuple(sorted(path.name for path in folder.iterdir() if path.suffix in SUFFIXES))
+
+
+def fingerprint(mechanism: str) -> str:
+    """Return a digest of a mechanism's file and of the lumped species added to it, hex."""
+    file = locate(parted(mechanism)[0])
+    text = str(mechanism).partition("#")[2]
+    return hashlib.sha256(file.read_bytes() + text.encode()).hexdigest()
 
 
 def locate(name: str | Path) -> Path:

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
-from combustor.case.schema import Case
+from combustor.case.schema import Case, FuelCertificate
 from combustor.fuel import catalogue
+from combustor.fuel.certificate import Certificate, hydrogen_of_ratio
 from combustor.fuel.record import Fuel
 
 
@@ -23,4 +24,16 @@ def fuel_of(case: Case, name: str | None = None, mechanism: str | None = None) -
         return catalogue.find(name, chosen)
     if case.fuel.name is not None:
         return catalogue.find(case.fuel.name, chosen)
+    if case.fuel.certificate is not None:
+        return catalogue.from_certificate(_stated(case.fuel.certificate), chosen)
     return catalogue.from_composition(case.fuel.composition or {}, chosen)
+
+
+def _stated(table: FuelCertificate) -> Certificate:
+    """Return a case's certificate; hydrogen may stand there as an H/C ratio."""
+    given = {key: value for key, value in table if value is not None}
+    ratio = given.pop("hydrogen_carbon_ratio", None)
+    if ratio is not None:
+        others = (table.oxygen, table.nitrogen, table.sulfur)
+        given["hydrogen"] = hydrogen_of_ratio(ratio, *others)
+    return Certificate(**given)

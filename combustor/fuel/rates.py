@@ -64,6 +64,7 @@ class Rates:
 
     def _efficiency_of(self, reaction: int, species: str) -> float:
         body = self._solution.reaction(reaction).third_body
+        assert body is not None  # asked only of reactions that have one
         return float(body.efficiencies.get(species, body.default_efficiency))
 
     def _concentration_pattern(self, net: Array) -> sparse.csr_array:

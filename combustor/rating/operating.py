@@ -12,6 +12,7 @@ from combustor.airflow.result import Inlet
 from combustor.base.method import Method
 from combustor.case.schema import Case, Point
 from combustor.fuel.gas import Gas
+from combustor.fuel.liquids import supplied_enthalpy
 from combustor.fuel.record import Fuel
 from combustor.sizing.fire import HotGas, Supply, fuel_air_ratio_for, hot_gas
 
@@ -128,7 +129,7 @@ def operating_of(case: Case, point: Point, fuel: Fuel, gas: Gas) -> Operating:
         air=air,
         fuel=fuel_fractions,
         air_enthalpy=gas.enthalpy(temperature, pressure, air),
-        fuel_enthalpy=gas.enthalpy(fuel_temperature, pressure, fuel_fractions),
+        fuel_enthalpy=supplied_enthalpy(gas, fuel, fuel_temperature, pressure),
         fuel_flow=fuel_flow,
         water=gas.from_mole_fractions({"H2O": 1.0}),
         water_flow=point.water_injection,

@@ -11,6 +11,7 @@ from combustor.base.method import Method
 from combustor.case.schema import Case
 from combustor.emissions.profile import dry_15_along
 from combustor.fuel.gas import Gas
+from combustor.fuel.liquids import supplied_enthalpy
 from combustor.fuel.record import Fuel
 from combustor.kinetics.chain import Cell, burn
 from combustor.kinetics.primary import PrimaryZone
@@ -77,7 +78,8 @@ def burnout_of(
         gas.enthalpy(supply.temperature, supply.pressure, air),
         air,
     )
-    injected = Stream(fuel_flow, gas.enthalpy(supply.fuel_temperature, supply.pressure, pure), pure)
+    fuel_enthalpy = supplied_enthalpy(gas, fuel, supply.fuel_temperature, supply.pressure)
+    injected = Stream(fuel_flow, fuel_enthalpy, pure)
     flow = fresh.mass_flow + fuel_flow
     heat = (fresh.mass_flow * fresh.enthalpy + fuel_flow * injected.enthalpy) / flow
     mixed = (fresh.mass_flow * air + fuel_flow * pure) / flow

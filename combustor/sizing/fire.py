@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from combustor.base.errors import InfeasibleError
 from combustor.base.method import Method
 from combustor.fuel.gas import Gas, GasState
+from combustor.fuel.liquids import supplied_enthalpy
 from combustor.fuel.record import Fuel
 
 Array = NDArray[np.float64]
@@ -103,7 +104,7 @@ def burn_to_equilibrium(gas: Gas, fuel: Fuel, supply: Supply, fuel_air_ratio: fl
     per_moist = fuel_air_ratio / (1.0 + supply.humidity)
     air, pure = gas.air(supply.humidity), gas.fuel(fuel)
     air_enthalpy = gas.enthalpy(supply.temperature, supply.pressure, air)
-    fuel_enthalpy = gas.enthalpy(supply.fuel_temperature, supply.pressure, pure)
+    fuel_enthalpy = supplied_enthalpy(gas, fuel, supply.fuel_temperature, supply.pressure)
     mixture = (air + per_moist * pure) / (1.0 + per_moist)
     enthalpy = (air_enthalpy + per_moist * fuel_enthalpy) / (1.0 + per_moist)
     return gas.equilibrium(enthalpy, supply.pressure, mixture)

@@ -9,6 +9,7 @@ from typing import Literal
 from combustor.base.errors import InputError, Problem
 from combustor.emissions.exhaust import Emissions, from_gas
 from combustor.fuel.gas import ISO_DAY_HUMIDITY, Array, Gas
+from combustor.fuel.liquids import supplied_enthalpy
 from combustor.fuel.record import Fuel
 from combustor.kinetics.stirred import stirred
 
@@ -131,7 +132,10 @@ def flame(
     share = fuel_air_ratio / (1.0 + humidity + fuel_air_ratio)
     air, pure = gas.air(humidity), gas.fuel(fuel)
     mixture = share * pure + (1.0 - share) * air
-    enthalpy = share * gas.enthalpy(fuel_temperature or temperature, pressure, pure)
+    if fuel_temperature is None:  # premixed: a liquid fuel is vapour then
+        enthalpy = share * gas.enthalpy(temperature, pressure, pure)
+    else:
+        enthalpy = share * supplied_enthalpy(gas, fuel, fuel_temperature, pressure)
     enthalpy += (1.0 - share) * gas.enthalpy(temperature, pressure, air)
     burnt = gas.equilibrium(enthalpy, pressure, mixture)
     return Flame(

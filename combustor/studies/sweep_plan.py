@@ -13,13 +13,12 @@ from dataclasses import dataclass
 from functools import cached_property
 from itertools import pairwise, product
 from math import ceil
-from pathlib import Path as File
 from typing import Any
 
 from combustor.base.errors import InputError, Problem
 from combustor.case.entry import Entry, Path, with_entries
 from combustor.case.schema import Case
-from combustor.fuel.mechanism import locate
+from combustor.fuel.mechanism import fingerprint
 from combustor.fuel.of_case import fuel_of
 from combustor.studies.sweep_axis import Axis
 
@@ -101,10 +100,9 @@ class Plan:
     @cached_property
     def digest(self) -> str:
         """Digest of all that the results depend on, hex: case, mechanism, axes, points."""
-        path = File(locate(fuel_of(self.case).mechanism))
         said = {
             "case": self.case.model_dump(),
-            "mechanism": hashlib.sha256(path.read_bytes()).hexdigest(),
+            "mechanism": fingerprint(fuel_of(self.case).mechanism),
             "axes": [[axis.key, axis.values] for axis in self.axes],
             "points": self.points,
             "rows": [row.label for row in self.rows],

@@ -11,8 +11,10 @@ from combustor.base.errors import InputError
 from combustor.base.method import Reading
 from combustor.fuel import catalogue, choose_mechanism
 from combustor.fuel.gas import Gas
+from combustor.fuel.lumped import parted
 
 NEWER, OLDER = "ammonia-CO-H2-Alzueta-2023.yaml", "gri30.yaml"
+LUMPED = "lumped-base.yaml"
 
 
 @pytest.mark.parametrize(
@@ -33,10 +35,27 @@ NEWER, OLDER = "ammonia-CO-H2-Alzueta-2023.yaml", "gri30.yaml"
         ("propane", OLDER),
         ("methanol", OLDER),
         ("biogas", OLDER),
+        ("natural-gas-rich", OLDER),
     ],
 )
 def test_the_mechanism_follows_the_fuel(name, file):
     assert catalogue.find(name).mechanism.endswith(file)
+
+
+@pytest.mark.parametrize("name", ["jet-a", "lpg", "ethanol", "jet-a+30%hefa-spk"])
+def test_lumped_fuels_stand_on_the_shipped_base(name):
+    file, lumps = parted(catalogue.find(name).mechanism)
+    assert file.endswith(LUMPED)
+    assert lumps
+
+
+def test_liquids_and_gases_compare_on_one_mechanism_that_holds_them_all():
+    fuels = catalogue.together(["jet-a", "natural-gas", "hydrogen", "lpg"])
+    assert len({fuel.mechanism for fuel in fuels}) == 1
+    gas = Gas.load(fuels[0].mechanism)
+    assert all(gas.has(species) for fuel in fuels for species in fuel.composition)
+    with pytest.raises(InputError, match="NH3"):
+        catalogue.together(["jet-a", "ammonia"])
 
 
 def test_one_comparison_takes_one_mechanism():
@@ -55,7 +74,7 @@ def test_catalogue_of_mechanisms_is_true(mechanism):
     assert all((mechanism.source, mechanism.reading, mechanism.licence, mechanism.note))
     assert set(mechanism.species_cautions) <= mechanism.burns
     consumed = {species for r in gas.solution.reactions() for species in (r.reactants | r.products)}
-    assert mechanism.burns <= {species.upper() for species in consumed}
+    assert {gas.species_names[gas.index(species)] for species in mechanism.burns} <= consumed
 
 
 def test_methanol_has_chemistry_of_its_own():

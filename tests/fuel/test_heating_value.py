@@ -36,6 +36,8 @@ ISO_ROWS = [
 def test_pure_gases_stand_as_in_iso_6976(row):
     name, higher_volume, lower_volume, higher_mass, lower_mass, wobbe = row
     fuel = catalogue.find(name)
+    if fuel.liquid is not None:  # the standard's row is the vapour
+        fuel = catalogue.from_composition(fuel.composition)
     assert fuel.higher_heat_per_volume / 1e6 == pytest.approx(higher_volume, rel=1e-3)
     assert fuel.lower_heat_per_volume / 1e6 == pytest.approx(lower_volume, rel=1e-3)
     assert fuel.higher_heating_value / 1e6 == pytest.approx(higher_mass, rel=1e-3)
@@ -170,3 +172,44 @@ def test_atoms_and_masses_agree_between_formula_and_mechanism():
 )
 def test_oxygen_demand(formula, oxygen):
     assert oxygen_demand(atoms_of_formula(formula)) == oxygen
+
+
+# Source values: typical figures as published for each fuel (limits of the printed digits or range)
+PUBLISHED = [
+    ("jet-a: C11.4H22.1, H 14.0 %, 43.06 MJ/kg; 0.0680 by element balance", "jet-a",
+     (43.055e6, 43.065e6), (0.1395, 0.1405), (0.0679, 0.0681)),
+    ("hefa-spk: H 15.3 %, 44.1 MJ/kg", "hefa-spk", (44.05e6, 44.15e6), (0.1525, 0.1535), None),
+    ("ft-spk: H 15.4 %, 44.2 MJ/kg", "ft-spk", (44.15e6, 44.25e6), (0.1535, 0.1545), None),
+    ("atj-spk: H 15.3 %, 43.9 MJ/kg", "atj-spk", (43.85e6, 43.95e6), (0.1525, 0.1535), None),
+    ("diesel: EN 590 and No. 2, H 13.0-13.5 %, 42.6-43.0 MJ/kg", "diesel",
+     (42.6e6, 43.0e6), (0.130, 0.135), None),
+    ("hvo: EN 15940, H 15.2 %, 44.0 MJ/kg", "hvo", (43.95e6, 44.05e6), (0.1515, 0.1525), None),
+    ("methanol, liquid: H 12.6 %, 19.9 MJ/kg", "methanol",
+     (19.85e6, 19.95e6), (0.1255, 0.1265), (0.1540, 0.1550)),
+    ("ethanol, liquid: 26.8 MJ/kg; 0.1111 by element balance", "ethanol",
+     (26.7e6, 26.9e6), (0.1305, 0.1320), (0.11105, 0.11115)),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(
+    ("name", "heat", "hydrogen", "stoichiometric"),
+    [row[1:] for row in PUBLISHED],
+    ids=[row[0] for row in PUBLISHED],
+)
+def test_liquids_against_their_sources(name, heat, hydrogen, stoichiometric):
+    fuel = catalogue.find(name)
+    assert heat[0] <= fuel.lower_heating_value <= heat[1]
+    assert hydrogen[0] <= fuel.hydrogen_mass_fraction <= hydrogen[1]
+    if stoichiometric is not None:
+        assert stoichiometric[0] <= fuel.stoichiometric_fuel_air_ratio <= stoichiometric[1]
+
+
+@pytest.mark.parametrize(
+    ("name", "lower"),
+    [("NC4H10", 2657.60e3), ("IC4H10", 2648.42e3)],
+    ids=["ISO 6976:2016 n-butane 15 degC", "ISO 6976:2016 isobutane 15 degC"],
+)
+def test_lumped_butanes_burn_with_the_standard_heat(name, lower):
+    fuel = catalogue.from_composition({name: 1.0})
+    assert fuel.lower_heating_value * fuel.molar_mass == pytest.approx(lower, rel=1e-9)
+    assert fuel.mechanism_lower_heating_value * fuel.molar_mass == pytest.approx(lower, rel=1e-3)
