@@ -10,19 +10,12 @@ from combustor.airflow.result import AirSplit, AnnulusHeat
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
 from combustor.hardware.metal import Hardware, LinerWall
-from combustor.heat.gas_radiation import luminosity_hydrogen
-from combustor.heat.sides import AnnulusSide, Casing, Film, GasSide, Radiation
+from combustor.heat.sides import AnnulusSide, Casing, Film, GasSide
 from combustor.heat.wall import WallMarch, march
 from combustor.rating.fire import Fire, chain_pressure
 from combustor.rating.operating import Operating
 from combustor.rating.settings import Settings
-
-
-def radiation_of(fuel: Fuel) -> Radiation:
-    """Return how this fuel's flame radiates: clear for gases, luminous for liquids."""
-    if fuel.liquid is None:
-        return Radiation("grey-gas")
-    return Radiation("luminous", luminosity_hydrogen(fuel.hydrogen_mass_fraction))
+from combustor.sizing.wall_duty import radiation_of
 
 
 def walls_of(

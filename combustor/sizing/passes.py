@@ -12,7 +12,6 @@ from combustor.airflow.discharge import METERING_STATIC
 from combustor.airflow.result import AirSplit
 from combustor.hardware.metal import AxialProfile, Hardware
 from combustor.hardware.zone_air import mixed_share
-from combustor.heat.sides import Radiation
 from combustor.sizing import cooling, film_slots
 from combustor.sizing.air_budget import AirBudget, BudgetDemand, budget
 from combustor.sizing.cooling import FilmPlan
@@ -114,7 +113,7 @@ def wall_of(
         task.walls,
         shares,
         task.case.model.primary_jet_share,
-        Radiation("grey-gas"),
+        task.radiation,
         films,
     )
     limit = task.case.targets.wall_temperature - cooling.WALL_MARGIN

@@ -20,7 +20,7 @@ from combustor.sizing.record import Design
 from combustor.sizing.rounding import Rounded, round_to_drills
 from combustor.sizing.section import Section
 from combustor.sizing.state import State, Task
-from combustor.sizing.wall_duty import wall_duties
+from combustor.sizing.wall_duty import radiation_of, wall_duties
 
 FREE_PASSES = 8
 FROZEN_PASSES = 12
@@ -91,7 +91,9 @@ def task_of(case: Case, fuel: Fuel, gas: Gas) -> Task:
     if case.targets.front_end == "lean-premixed":
         wanted = case.targets.equivalence_ratio.primary
         burnout = burnout_of(case, fuel, gas, duty.supply, duty.fuel_flow, wanted)
-    return Task(case, duty, section, casing, burnout, wall_duties(case, fuel, gas, duty))
+    return Task(
+        case, duty, section, casing, burnout, wall_duties(case, fuel, gas, duty), radiation_of(fuel)
+    )
 
 
 def _front_share(case: Case, duty: Duty) -> float:

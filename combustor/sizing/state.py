@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 from combustor.case.schema import Case
 from combustor.hardware.metal import Hardware
+from combustor.heat.sides import Radiation
 from combustor.sizing.air_budget import AirBudget
 from combustor.sizing.burnout import Burnout
 from combustor.sizing.casing import Casing
@@ -29,6 +30,7 @@ from combustor.sizing.sketch import (
 from combustor.sizing.wall_duty import WallDuty
 
 CROSS_FIRE_SHARE = 0.25
+CLEAR_FLAME = Radiation("grey-gas")
 
 
 @dataclass(frozen=True)
@@ -45,6 +47,7 @@ class Task:
     casing: Casing
     burnout: Burnout | None = None
     walls: tuple[WallDuty, ...] = ()
+    radiation: Radiation = CLEAR_FLAME
 
     @property
     def front_end(self) -> str:

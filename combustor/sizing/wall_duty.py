@@ -8,6 +8,8 @@ from combustor.airflow.result import Inlet
 from combustor.case.schema import Case, Point
 from combustor.fuel.gas import Gas
 from combustor.fuel.record import Fuel
+from combustor.heat.gas_radiation import luminosity_hydrogen
+from combustor.heat.sides import Radiation
 from combustor.sizing.duty import Duty
 from combustor.sizing.fire import HotGas, Supply, fuel_air_ratio_for, hot_gas
 
@@ -36,6 +38,13 @@ class WallDuty:
     overall: float
     stoichiometric: float
     table: HotGas
+
+
+def radiation_of(fuel: Fuel) -> Radiation:
+    """Return how this fuel's flame radiates: clear for gases, luminous for liquids."""
+    if fuel.liquid is None:
+        return Radiation("grey-gas")
+    return Radiation("luminous", luminosity_hydrogen(fuel.hydrogen_mass_fraction))
 
 
 def wall_duties(case: Case, fuel: Fuel, gas: Gas, duty: Duty) -> tuple[WallDuty, ...]:
