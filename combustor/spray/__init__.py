@@ -1,0 +1,1 @@
+"""Floor 3: drops of liquid fuel, their size and how fast they evaporate."""
