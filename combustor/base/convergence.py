@@ -16,7 +16,7 @@ class Convergence:
         Largest residual in the solve's own dimensionless measure.
     iterations : int
     message : str
-        Empty when converged; else what stood in the way.
+        What stood in the way; when converged, empty or what it took.
     """
 
     converged: bool

@@ -12,6 +12,7 @@ from combustor.fuel.record import Fuel
 from combustor.hardware.zone_air import FRONT_ROLES
 from combustor.kinetics.near_wall import NEAR_WALL
 from combustor.rating.couple import Coupled
+from combustor.rating.drilled import crowded_rows
 from combustor.rating.record import PointRating
 from combustor.rating.settings import RECIRCULATION, UNMIXEDNESS, Settings
 from combustor.sizing.exit_pattern import JET_ROLES
@@ -53,6 +54,7 @@ def findings_of(
         *_wall_quench(rated),
         *_annulus(rated, coupled),
         *_rich_chemistry(rated, fuel),
+        *(crowded_rows(rated.hardware) if rated.hardware else ()),
         *_measured_openings(case),
         *_notices(rated, coupled, fuel, settings),
     ]

@@ -187,12 +187,12 @@ def _all_findings(ratings: Ratings) -> list[tuple[str, Finding]]:
     return general + [(point.name, f) for point in ratings.points for f in point.findings]
 
 
-def solve_words(convergence: Convergence) -> str:
-    """Return in words how an iterative solve ended."""
+def solve_words(convergence: Convergence, measure: str = "") -> str:
+    """Return in words how an iterative solve ended, its residual in the words of ``measure``."""
     done = "converged" if convergence.converged else "! not converged"
     count = convergence.iterations
     words = f"{done} in {count} {'pass' if count == 1 else 'passes'}"
-    words += f", residual {convergence.residual:.1e}"
+    words += f", {measure or f'residual {convergence.residual:.1e}'}"
     return f"{words}: {convergence.message}" if convergence.message else words
 
 

@@ -18,10 +18,11 @@ from combustor.sizing.record import Design, Dimension
 
 def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> tuple[Block, ...]:
     """Return the whole report of a sized case."""
+    missed = f"worst target missed by {100.0 * design.convergence.residual:.0f} % of its tolerance"
     facts = (
         ("pressure loss", _loss_words(design)),
         ("fuel flow", f"{design.fuel_flow:.4f} kg/s at the design point"),
-        ("solve", solve_words(design.convergence)),
+        ("solve", solve_words(design.convergence, missed)),
     )
     return (
         Heading(f"{case.title}: sized" if case.title else "Sized"),
