@@ -41,7 +41,7 @@ def crowded_rows(hardware: Hardware) -> Iterator[Finding]:
             pitch,
             LEAST_PITCH,
             "",
-            f"{row.count} holes of {1e3 * row.diameter:.1f} mm around {1e3 * around:.0f} mm of wall, "
+            f"{row.count} holes of {1e3 * row.diameter:.1f} mm on {1e3 * around:.0f} mm of wall, "
             f"where {most} fit. Several rings of holes are several rows, each with its x.",
             f"{ROW_PITCH.source.partition(';')[0]} ({ROW_PITCH.reading})",
         )
