@@ -46,8 +46,18 @@ VORTEX_CORE = Method(
     reading="common practice, no source",
 )
 
+HYDROGEN_SPEED_UP = Method(
+    key="hydrogen-turbulent-speed-up",
+    quantity="turbulent burning velocity of lean hydrogen over that of a hydrocarbon alike",
+    source="flames of low Lewis number wrinkle by themselves: 2 to 10 times seen; 4 taken for pure "
+    "hydrogen, in proportion for blends",
+    reading="judgement",
+)
+
 CORE_FACTOR, CORE_FACTOR_HYDROGEN = 2.0, 3.0
 WALL_FACTOR = 2.0
+PURE_HYDROGEN_SPEED_UP = 4.0
+SWIRLED_HYDROGEN = 0.3  # share of the fuel from which nothing is said of a swirling passage
 CONFINEMENT = 5.0  # a confined flame over the tube burner's critical gradient, judgement
 RISKY_SWIRL = 0.5
 TURBULENCE_INTENSITY = 0.10  # of the passage velocity, behind vanes; judgement
@@ -130,3 +140,8 @@ def critical_gradient(laminar: float, diffusivity: float, hydrogen_share: float)
 def core_factor(hydrogen_share: float) -> float:
     """Return the core velocity asked for over the turbulent burning velocity [-]."""
     return CORE_FACTOR + (CORE_FACTOR_HYDROGEN - CORE_FACTOR) * min(hydrogen_share, 1.0)
+
+
+def hydrogen_speed_up(hydrogen_share: float) -> float:
+    """Return the factor on the turbulent burning velocity [-]; source: ``HYDROGEN_SPEED_UP``."""
+    return 1.0 + (PURE_HYDROGEN_SPEED_UP - 1.0) * min(hydrogen_share, 1.0)

@@ -136,8 +136,9 @@ def premixer_of(
             flashback.WALL_GRADIENT,
             flashback.CRITICAL_GRADIENT,
             flashback.FLASHBACK_FACTORS,
+            *((flashback.HYDROGEN_SPEED_UP,) if hydrogen > 0.0 else ()),
         ]
-    findings += _vortex(hardware, metal)
+    findings += _vortex(hardware, metal, hydrogen)
     return Premixer(values, tuple(findings), tuple(methods))
 
 
@@ -230,7 +231,7 @@ def _flashback_values(
     charge: Charge, velocity: BurningVelocity, hydrogen: float
 ) -> dict[str, float | None]:
     fluctuation = flashback.TURBULENCE_INTENSITY * charge.velocity
-    turbulent = max(
+    turbulent = flashback.hydrogen_speed_up(hydrogen) * max(
         flashback.turbulent_velocity_damkoehler(fluctuation, velocity.value),
         flashback.turbulent_velocity_zimont(
             fluctuation,
@@ -277,7 +278,7 @@ def _flashback(
         )
 
 
-def _vortex(hardware: Hardware, metal: Injector) -> Iterator[Finding]:
+def _vortex(hardware: Hardware, metal: Injector, hydrogen: float) -> Iterator[Finding]:
     swirlers: list[Swirler] = [
         opening.swirler
         for name in metal.openings
@@ -286,7 +287,15 @@ def _vortex(hardware: Hardware, metal: Injector) -> Iterator[Finding]:
     if not swirlers:
         return
     number = max(swirl_number(s.hub_diameter, s.tip_diameter, s.vane_angle) for s in swirlers)
-    if number > flashback.RISKY_SWIRL:
+    if number > flashback.RISKY_SWIRL and hydrogen > flashback.SWIRLED_HYDROGEN:
+        yield Finding(
+            "watch",
+            f"flashback in {metal.name}, vortex core: cannot say",
+            advice=f"{100.0 * hydrogen:.0f} % hydrogen in a passage of swirl number {number:.2f}: "
+            "flames run up the core of such a vortex, and no screen here covers it.",
+            source=flashback.VORTEX_CORE.citation,
+        )
+    elif number > flashback.RISKY_SWIRL:
         yield Finding(
             "watch",
             f"flashback in {metal.name}, vortex core: swirl number",

@@ -72,12 +72,14 @@ def share_records(switch: Switch) -> tuple[Any, ...]:
 def verdict_records(switch: Switch) -> tuple[dict[str, Any], ...]:
     """Return one line a fuel, the first broken limit beside the verdict."""
     found = []
-    for one in switch.fuels:
+    for one in all_of(switch):
         broken = one.broken
         words = reason_words(broken[0]) if broken else "every limit is kept"
         if len(broken) > 1:
             words += f"; {len(broken) - 1} more"
         name = one.properties.fuel.name
+        if one is switch.baseline:
+            words = f"the present fuel: {words}"
         found.append({"fuel": name, "verdict": one.verdict, "reason": words})
     found += [
         {"fuel": name, "verdict": "cannot say", "reason": why} for name, why in switch.refused

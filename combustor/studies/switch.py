@@ -275,7 +275,8 @@ class _Study:
             return None, ""
         alone = catalogue.find(fuel.name)
         design = self._design(points)
-        if alone.mechanism == fuel.mechanism or design.fuel_flow is None:
+        called = alone.mechanism_note.partition(":")[0]
+        if called == fuel.mechanism_note.partition(":")[0] or design.fuel_flow is None:
             return None, ""
         flow: dict[str, float | None] = {
             "exit_temperature": None,
@@ -290,7 +291,7 @@ class _Study:
         except CombustorError:
             return None, ""
         made = rated.emissions
-        return (None if made is None else made.nox_dry_15), alone.mechanism_note.partition(":")[0]
+        return (None if made is None else made.nox_dry_15), called
 
     def _tell(self) -> None:
         self.done += 1

@@ -37,6 +37,7 @@ def reasons_of(
     yield from _emissions(before, after)
     yield from _heat(own, properties, before, after, hold)
     yield from _radiation(own, properties, before, after)
+    yield from _atomiser(own, properties, before, after)
     yield from _unknown_edges(properties, uses)
 
 
@@ -91,6 +92,21 @@ def _radiation(
     if new.fuel.atoms.get("C", 0.0) == 0.0 < own.fuel.atoms.get("C", 0.0):
         why = "no carbon dioxide radiates, more water does, and the gas beside the wall differs"
     yield f"peak wall at {after.name} {peaks[1] - peaks[0]:+.0f} K: {why}"
+
+
+def _atomiser(
+    own: Properties, new: Properties, before: PointRating, after: PointRating
+) -> Iterator[str]:
+    """Yield the pressure drop of the same atomiser: flow squared over density."""
+    if own.fuel.phase != "liquid" or new.fuel.phase != "liquid":
+        return
+    if before.fuel_flow is None or after.fuel_flow is None:
+        return
+    flow = after.fuel_flow / before.fuel_flow
+    drop = flow**2 * own.fuel.density_15 / new.fuel.density_15
+    yield f"pressure drop of the same atomiser {_percent(drop, 1.0)}, volume flow " + _percent(
+        flow * own.fuel.density_15 / new.fuel.density_15, 1.0
+    )
 
 
 def _unknown_edges(new: Properties, uses: Sequence[InjectorUse]) -> Iterator[str]:
