@@ -212,6 +212,11 @@ def _flame(command: _Parser) -> None:
         "--humidity", metavar="H", help="kg water per kg dry air (default the ISO day, 0.00634)"
     )
     command.add_argument("--mechanism", metavar="FILE", help="a Cantera file of your own")
+    command.add_argument(
+        "--burning-velocity",
+        action="store_true",
+        help="also solve a flat flame (GRI-Mech 3.0, dry air; several seconds)",
+    )
     _tables(command)
 
 

@@ -94,11 +94,18 @@ def flame(arguments: argparse.Namespace) -> Answer:
     fuel = combustor.find_fuel(arguments.fuel, arguments.mechanism)
     result = combustor.flame(fuel, **given)
     notes = write_tables(arguments, report.flame_data(result))
-    text = (
-        f"{dumps(report.flame_document(result))}\n"
-        if arguments.json
-        else set_report(report.flame_report(result, fuel))
-    )
+    document = report.flame_document(result)
+    blocks = report.flame_report(result, fuel)
+    if arguments.burning_velocity:
+        from combustor.operability.burning_velocity import flame_velocity
+        from combustor.report.flame_velocity import velocity_blocks, velocity_entries
+
+        velocity = flame_velocity(
+            fuel.composition, result.equivalence_ratio, result.mixture_temperature, result.pressure
+        )
+        document |= velocity_entries(velocity)
+        blocks += velocity_blocks(velocity)
+    text = f"{dumps(document)}\n" if arguments.json else set_report(blocks)
     good = result.stirred is None or result.stirred.status == "burning"
     return Answer(text, EXIT_GOOD if good else EXIT_LIMIT, notes)
 

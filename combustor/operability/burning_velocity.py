@@ -13,6 +13,7 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy.interpolate import PchipInterpolator, RegularGridInterpolator
 
+from combustor.base.errors import InputError, NotConvergedError, Problem
 from combustor.base.method import Method, Notice
 from combustor.fuel.choose_mechanism import catalogue
 
@@ -130,7 +131,24 @@ def flame_velocity(
         [-]
     temperature, pressure : float
         Of the unburnt mixture, dry air [K], [Pa]
+
+    Raises
+    ------
+    InputError
+        A fuel GRI-Mech 3.0 does not hold.
+    NotConvergedError
+        No flame found, as beyond the flammable limits.
     """
+    known = {name.upper() for name in _without_nitrogen_chemistry().species_names}
+    strange = sorted(name for name in composition if name.upper() not in known)
+    if strange:
+        raise InputError(
+            Problem(
+                f"no burning velocity of {', '.join(strange)} here",
+                "fuels of methane to propane, hydrogen, carbon monoxide, methanol and inerts",
+                "--burning-velocity",
+            )
+        )
     parts = tuple(sorted((name, round(share, 6)) for name, share in composition.items() if share))
     value = _solved(
         parts, round(equivalence_ratio, 4), round(temperature, 1), float(f"{pressure:.4g}")
@@ -153,7 +171,13 @@ def _solved(
     solution.TP = temperature, pressure
     flame = ct.FreeFlame(solution, width=ATMOSPHERIC_WIDTH if pressure < 2e5 else FLAME_WIDTH)
     flame.set_refine_criteria(ratio=4, slope=0.1, curve=0.2)
-    flame.solve(loglevel=0, auto=True)
+    try:
+        flame.solve(loglevel=0, auto=True)
+    except ct.CanteraError as error:
+        raise NotConvergedError(
+            f"no flat flame found at equivalence ratio {equivalence_ratio:g}, {temperature:g} K "
+            f"and {pressure:g} Pa: it may lie beyond the flammable limits"
+        ) from error
     return float(flame.velocity[0])
 
 

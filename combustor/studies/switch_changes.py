@@ -16,6 +16,7 @@ from combustor.hardware.zone_air import zone_air
 from combustor.rating.record import PointRating
 from combustor.sizing.drill import drill_step
 from combustor.studies.switch_record import Change, InjectorUse, Limit
+from combustor.studies.switch_verdict import OTHER_PHASE
 
 ROWS_TO_OPEN = Method(
     key="rows-to-open",
@@ -95,7 +96,7 @@ def _at(points: Sequence[PointRating], name: str) -> PointRating:
 
 
 def _nozzle(design: str, uses: Sequence[InjectorUse], broken: Sequence[Limit]) -> Iterator[Change]:
-    if any(limit.what == "fuel nozzle: gas for liquid" for limit in broken):
+    if any(limit.what == OTHER_PHASE for limit in broken):
         yield Change(
             "fuel nozzle",
             "new",

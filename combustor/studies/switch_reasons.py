@@ -89,7 +89,9 @@ def _radiation(
     if peaks[0] is None or peaks[1] is None:
         return
     why = "hotter or cooler gas beside the wall"
-    if new.fuel.atoms.get("C", 0.0) == 0.0 < own.fuel.atoms.get("C", 0.0):
+    if own.fuel.phase == "liquid":
+        why = "less soot radiates from a fuel with more hydrogen"
+    elif new.fuel.atoms.get("C", 0.0) == 0.0 < own.fuel.atoms.get("C", 0.0):
         why = "no carbon dioxide radiates, more water does, and the gas beside the wall differs"
     yield f"peak wall at {after.name} {peaks[1] - peaks[0]:+.0f} K: {why}"
 

@@ -13,6 +13,7 @@ from combustor.studies.switch_record import Change, Limit, Verdict
 
 FAR_TOO_HOT = 100.0  # K over the wall target that no slot brings back
 FAR_TOO_DIRTY = 3.0  # times an emission target that no derate brings back
+OTHER_PHASE = "a fuel nozzle for the other phase, gas or liquid"
 NOZZLE = "fuel nozzle: temperature-corrected Wobbe index"
 
 
@@ -124,7 +125,7 @@ def _nozzle(properties: Properties, baseline: Properties) -> Iterator[Limit]:
     if new is None and old is None:
         return
     if new is None or old is None:
-        yield Limit("fuel nozzle: gas for liquid", "", None, None, "", False, by_change=True)
+        yield Limit(OTHER_PHASE, "", None, None, "", False, by_change=True)
         return
     low, high = (1.0 - WOBBE_WINDOW) * old, (1.0 + WOBBE_WINDOW) * old
     edge = low if new < old else high

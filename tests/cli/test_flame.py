@@ -103,3 +103,13 @@ def test_every_wrong_quantity_is_named_at_once(capsys):
     wrong = ["flame", "methane", "--phi", "-1", "--temperature", "700 bar", "--pressure", "0"]
     assert main(wrong) == 2
     assert len(capsys.readouterr().err.strip().split("\n")) == 4
+
+
+def test_burning_velocity_on_request(capsys):
+    given = ["--phi", "1", "--temperature", "298 K", "--pressure", "1 atm", "--burning-velocity"]
+    assert main(["flame", "hydrogen", *given, "--humidity", "0", "--json"]) == 0
+    flame = json.loads(capsys.readouterr().out)
+    assert 2.1 <= flame["burning_velocity_m_s"] <= 2.4
+    assert flame["burning_velocity_method"] == "burning-velocity-kinetic"
+    assert main(["flame", "ammonia", *given]) == 2
+    assert "no burning velocity of NH3" in capsys.readouterr().err
