@@ -269,8 +269,12 @@ def _nearest_few(area: float, drill: float) -> tuple[int, float]:
     """Return count and drill nearest to an area, among the drills about the wanted one."""
     step = drill_step(drill)
     best = (math.inf, 1, drill)
-    for number in (0, -1, 1, -2, 2, -3, 3):
-        diameter = nearest_drill(drill + number * step)
+    about = [drill + number * step for number in (0, -1, 1, -2, 2, -3, 3)]
+    # fewer holes than four of the wanted drill: as few, of whatever drill is nearest
+    usual = max(round(area / (0.25 * math.pi * drill**2)), 1)
+    few = [math.sqrt(4.0 * area / (math.pi * n)) for n in range(1, 5) if usual < 4]
+    for wanted in (*about, *few):
+        diameter = nearest_drill(wanted)
         one = 0.25 * math.pi * diameter**2
         count = max(round(area / one), 1)
         best = min(best, (abs(count * one / area - 1.0), count, diameter), key=lambda t: t[0])
