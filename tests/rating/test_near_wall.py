@@ -178,3 +178,26 @@ def test_marched_wall_meets_the_target_with_little_to_spare(bench):
     target = bench.case.targets.wall_temperature
     hottest = max(w.temperature for load in ("full", "p80") for w in bench.rated(load).walls)
     assert target - 75.0 < hottest < target
+
+
+def test_a_leak_through_the_wall_stays_beside_it_to_the_liner_end(bench):
+    """Leakage counts in no zone: it clings to the wall it leaked through."""
+    metal = bench.design.hardware
+    leak = replace(metal.opening("leakage"), name="seam", station=0.5 * metal.liner_length)
+    seamed = replace(
+        metal,
+        openings=tuple(sorted((*metal.openings, leak), key=lambda one: (one.station, one.name))),
+    )
+    operating = operating_of(bench.case, bench.point("full"), bench.fuel, bench.gas)
+    coupled = couple(bench.gas, bench.fuel, operating, seamed, bench.settings)
+    stretches = layout_of(seamed, bench.settings).stretches
+    inside = [k for k, s in enumerate(stretches) if s.zone != "transition"]
+    films = [o for o in seamed.openings if o.role == "film"]
+    shares = film_shares(coupled.walls)
+    flows = {flow.name: flow.mass_flow for flow in coupled.split.openings}
+    left = coupled.fire.beside.film_left[inside[-1]]
+    of_films = sum(flows[o.name] * float(shares[o.name].at(metal.liner_length)) for o in films)
+    assert left - of_films == pytest.approx(flows["seam"], rel=1e-3)
+    rating = bench.rate("full", hardware=seamed)
+    assert rating.balances["elements"] <= 1e-10 and rating.balances["enthalpy"] <= 1e-6
+    assert rating.zones[-2].air_fraction < 1.0 - flows["seam"] / sum(flows.values())
