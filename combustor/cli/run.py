@@ -52,7 +52,7 @@ def _run(argv: list[str]) -> int:
 def _answer(arguments: argparse.Namespace) -> int:
     import warnings
 
-    from combustor.base.errors import CombustorError
+    from combustor.base.errors import CombustorError, InputError
     from combustor.cli.complaint import complaint, internal_complaint
 
     # The matrices are small: a second BLAS thread only burns the other core. Read by numpy
@@ -65,6 +65,10 @@ def _answer(arguments: argparse.Namespace) -> int:
 
             answered = answer(arguments)
     except CombustorError as error:
+        if isinstance(error, InputError):
+            from combustor.cli.place import placed
+
+            error = placed(error, arguments)
         _complain(complaint(error))
         return error.exit_code
     except Exception as error:

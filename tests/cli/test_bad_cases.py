@@ -72,3 +72,31 @@ def test_all_problems_are_shown_at_once_each_with_its_line(capsys, written):
     lines = capsys.readouterr().err.strip().split("\n")
     assert len(lines) > 3
     assert all("case.toml:" in line for line in lines[:-1])
+
+
+@pytest.mark.parametrize("command", ["size", "rate"])
+@pytest.mark.parametrize(
+    ("old", "new", "key"),
+    [
+        ('name = "natural-gas"', 'name = "natural-gaz"', "fuel.name"),
+        ('name = "natural-gas"', 'name = "natural-gas+10%ammonia"', "fuel.name"),
+        ('name = "natural-gas"', "composition = { N2 = 1.0 }", "fuel.composition"),
+        ('name = "natural-gas"', "composition = { CH4 = 0.9, XYZ = 0.1 }", "fuel.composition"),
+        ("# [model]  ", '[model]\nmechanism = "none.yaml"\n# ', "model.mechanism"),
+    ],
+)
+def test_a_fuel_that_cannot_be_used_is_shown_with_its_line(capsys, written, command, old, new, key):
+    text = edited(old, new)
+    path = written(text)
+    assert main([command, path]) == 2
+    (first, *_) = capsys.readouterr().err.split("\n")
+    stated = new.split("\n")[-2 if "mechanism" in new else -1]
+    line = next(at for at, row in enumerate(text.split("\n"), 1) if row.startswith(stated))
+    assert first.startswith(f"{path}:{line}: {key}: ")
+
+
+def test_a_fuel_named_on_the_command_line_is_not_looked_for_in_the_file(capsys, written):
+    assert main(["rate", written(STARTER), "--fuel", "natural-gaz"]) == 2
+    err = capsys.readouterr().err
+    assert err.startswith("fuel: no such fuel (got 'natural-gaz')")
+    assert "case.toml" not in err
