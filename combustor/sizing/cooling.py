@@ -45,6 +45,7 @@ BLOWING_RANGE = (0.5, 4.0)
 COMMON_AIR = (1.0, 1.15, 1.35, 1.6, 2.0, 2.6)
 _STEP_TEMPERATURE = 300.0
 _SETTLED = 2.0
+NEAR_LIMIT = 10.0  # K below the limit: the wall has set the slot
 
 
 @dataclass(frozen=True)
@@ -126,6 +127,19 @@ def plan_films(
         peak, point = panel_peaks(sketch, wall, flow)
     return FilmPlan(
         tuple(flow.tolist()), tuple(peak.tolist()), point, wall.limit, _left(sketch, wall, flow)
+    )
+
+
+def what_sets(plan: FilmPlan) -> str:
+    """Say what the air of the slots is set by, for a table."""
+    count = len(plan.peak)
+    by_wall = sum(peak >= plan.limit - NEAR_LIMIT for peak in plan.peak)
+    by_holes = count - by_wall
+    if by_holes == 0:
+        return f"all {count} slots are set by the wall"
+    return (
+        f"{by_wall} of {count} slots are set by the wall, {by_holes} by the sparsest metering "
+        "holes that still make a film"
     )
 
 

@@ -251,6 +251,7 @@ def _budget(task: Task, state: State) -> Iterator[Dimension]:
         "fraction",
         cooling.FILM_AIR if targets.film_air is None else stated,
         Candidate(cooling.USUAL_FILM_AIR, cooling.FILM_AIR_SHARE, "a range, blind to the duty"),
+        "" if state.film_plan is None else cooling.what_sets(state.film_plan),
     )
     yield Dimension("leakage", shares.leak, "fraction", stated)
 
