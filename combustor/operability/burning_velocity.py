@@ -45,7 +45,7 @@ BURNING_VELOCITY_KINETIC = Method(
 BURNING_VELOCITY_TABLE = Method(
     key="burning-velocity-table",
     quantity="laminar burning velocity of methane, hydrogen and their blends",
-    source="120 flames computed as burning-velocity-kinetic; logarithms linear between them in "
+    source="180 flames computed as burning-velocity-kinetic; logarithms linear between them in "
     "logarithm of pressure and temperature, cubic in equivalence ratio, linear in hydrogen share",
     reading="computed",
     validity={
@@ -53,7 +53,7 @@ BURNING_VELOCITY_TABLE = Method(
         "temperature": (500.0, 900.0),
         "pressure": (5e5, 2e6),
     },
-    scatter="see the head of burning_velocity.toml",
+    scatter="7 % low to 5 % high against ten flames between its nodes",
 )
 
 # W, eta, xi, temperature exponent, pressure exponent

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
+from dataclasses import replace
 
 from combustor.airflow.result import Inlet
 from combustor.base.convergence import Convergence
@@ -211,7 +212,8 @@ class _Study:
         rated, solution = rate_near(
             self.case, point, self.own, self.gas, self.hardware, self.settings, None, True
         )
-        self.solutions[point.name] = solution
+        # where one fuel goes out says nothing of another
+        self.solutions[point.name] = replace(solution, blowout=None)
         self._tell()
         return rated
 
