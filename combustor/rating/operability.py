@@ -293,10 +293,17 @@ def _margin_finding(operating: Operating, values: Mapping[str, float | None]) ->
 
 
 def _relight(
+def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> tuple[Finding, ...]:
+    """Judge the loading of a relight point that does not burn; nothing of other points."""
+    if operating.kind != "relight":
+        return ()
+    return tuple(_relight(operating, fuel, _correlated(operating, hardware, fuel), None))
+
+
     operating: Operating,
     fuel: Fuel,
     values: Mapping[str, float | None],
-    equivalence_ratio: float,
+    equivalence_ratio: float | None,
 ) -> Iterator[Finding]:
     theta = values["ignition_loading_1e6"]
     assert theta is not None

@@ -17,7 +17,12 @@ from combustor.hardware.metal import Hardware
 from combustor.rating.assemble import rated, unrated
 from combustor.rating.couple import Coupled, couple
 from combustor.rating.judge import findings_of, gravest_first
-from combustor.rating.operability import NOTHING, deceleration, operability_of
+from combustor.rating.operability import (
+    NOTHING,
+    deceleration,
+    light_up_findings,
+    operability_of,
+)
 from combustor.rating.operating import operating_of
 from combustor.rating.record import PointRating, Ratings
 from combustor.rating.settings import Settings, settings_of
@@ -129,6 +134,7 @@ def rate_near(
     if record.status != "burning":
         return replace(record, findings=findings, operability=NOTHING), coupled
     known = None if near is None else near.blowout
+        findings += light_up_findings(operating, hardware, fuel)
     judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record, known)
     coupled = replace(coupled, blowout=judged.blowout)
     methods = {method.key: method for method in (*record.methods, *judged.methods)}
