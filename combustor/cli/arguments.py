@@ -156,6 +156,11 @@ def _sweep(command: _Parser) -> None:
     command.add_argument(
         "--anew", action="store_true", help="begin the results file anew, whatever it holds"
     )
+    command.add_argument(
+        "--no-margins",
+        action="store_true",
+        help="leave out blow-out and the rest of operability: about half the time",
+    )
     command.add_argument("--workers", metavar="N", help="processes (default: one for each core)")
     command.add_argument(
         "--nox-limit", metavar="X", help='dry, 15 %% O2, e.g. "25 ppm" (default: the case\'s)'

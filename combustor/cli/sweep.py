@@ -31,7 +31,8 @@ INTERRUPTED = 130
 def sweep(arguments: argparse.Namespace) -> Answer:
     """Rate a case over one or two varied entries."""
     case = combustor.load_case(arguments.case)
-    laid = plan(case, _axes(case, arguments.vary), arguments.point)
+    axes = _axes(case, arguments.vary)
+    laid = plan(case, axes, arguments.point, operability=not arguments.no_margins)
     limits = _limits(case, arguments)
     workers = _workers(arguments.workers)
     _check_outputs(arguments)

@@ -72,6 +72,7 @@ def sweep(
     workers: int | None = None,
     report: Report | None = None,
     describe: Describe | None = None,
+    operability: bool = True,
 ) -> Sweep:
     """Rate a case over one or two varied entries.
 
@@ -96,6 +97,8 @@ def sweep(
         Told of progress.
     describe : callable, optional
         Makes a plain document of each rated point, in the worker, to keep beside the numbers.
+    operability : bool
+        Whether to judge blow-out, light-up and premixers: about doubles the cost.
 
     Returns
     -------
@@ -109,7 +112,7 @@ def sweep(
     WorkersDiedError
         What was finished is kept.
     """
-    laid = plan(case, axes, points)
+    laid = plan(case, axes, points, operability=operability)
     return carried_out(laid, results, replace, executor, workers, report, describe)
 
 
@@ -150,6 +153,7 @@ def header_of(laid: Plan, documents: bool) -> dict[str, object]:
             {"key": axis.key, "unit": axis.unit, "values": list(axis.shown)} for axis in laid.axes
         ],
         "points": list(laid.points),
+        "operability": laid.operability,
         "documents": documents,
     }
 

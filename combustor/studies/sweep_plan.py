@@ -83,6 +83,8 @@ class Plan:
         The grid first, then the case itself and the steps about it.
     steps : tuple of Step
     chunks : tuple of Chunk
+    operability : bool
+        Whether blow-out, light-up and premixers are judged as well.
     """
 
     case: Case
@@ -91,6 +93,7 @@ class Plan:
     rows: tuple[Row, ...]
     steps: tuple[Step, ...]
     chunks: tuple[Chunk, ...]
+    operability: bool = True
 
     @property
     def ratings(self) -> int:
@@ -106,6 +109,7 @@ class Plan:
             "axes": [[axis.key, axis.values] for axis in self.axes],
             "points": self.points,
             "rows": [row.label for row in self.rows],
+            "operability": self.operability,
         }
         return hashlib.sha256(json.dumps(said, sort_keys=True).encode()).hexdigest()
 
@@ -124,6 +128,7 @@ def plan(
     axes: Sequence[Axis],
     points: Sequence[str] | None = None,
     sensitivities: bool = True,
+    operability: bool = True,
 ) -> Plan:
     """Lay a sweep out.
 
@@ -136,6 +141,8 @@ def plan(
         Names of the operating points wanted; all when left out.
     sensitivities : bool
         Whether to solve the case itself and small steps about it as well.
+    operability : bool
+        Whether to judge blow-out, light-up and premixers: about doubles the cost.
 
     Raises
     ------
@@ -161,7 +168,7 @@ def plan(
         if around:
             own = tuple(range(first, len(rows)))
             chunks += [Chunk(name, first, own) for name in names]
-    return Plan(case, axes, names, tuple(rows), steps, tuple(chunks))
+    return Plan(case, axes, names, tuple(rows), steps, tuple(chunks), operability)
 
 
 def _refuse_axes(axes: Sequence[Axis]) -> None:

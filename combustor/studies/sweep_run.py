@@ -219,6 +219,7 @@ class _Run:
             near=None if job.anchors else self.solutions[job.chunk],
             anchors=job.anchors and len(self.todo[job.chunk]) > 1,
             describe=self.describe if job.wanted else None,
+            operability=self.plan.operability,
         )
 
     def _take(self, future: Future[Any]) -> BaseException | None:

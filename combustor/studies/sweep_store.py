@@ -223,8 +223,13 @@ def _check_header(first: bytes, header: Mapping[str, Any], path: Path) -> None:
         "points": "other operating points",
         "digest": "the case or its mechanism has changed",
         "documents": "it holds trends only",
+        "operability": "with or without the margins",
     }
-    said = [words[key] for key in ("version", "vary", "points", "documents") if key in differ]
+    said = [
+        words[key]
+        for key in ("version", "vary", "points", "operability", "documents")
+        if key in differ
+    ]
     raise InputError(
         Problem(
             f"holds the results of another sweep: {', '.join(said) or words['digest']}",

@@ -52,6 +52,8 @@ class Task:
         Whether others will start from this one.
     describe : callable or None
         Makes the full document of a rated point.
+    operability : bool
+        Whether blow-out, light-up and premixers are judged as well.
     """
 
     case: Case
@@ -61,6 +63,7 @@ class Task:
     near: Coupled | None
     anchors: bool
     describe: Describe | None
+    operability: bool = True
 
 
 @dataclass(frozen=True)
@@ -112,7 +115,7 @@ def _rate(task: Task) -> tuple[PointRating, Coupled]:
         hardware,
         settings_of(case.model),
         near,
-        operability=True,
+        operability=task.operability,
     )
 
 

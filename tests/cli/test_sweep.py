@@ -47,7 +47,7 @@ def asked(hole):
     """Fifteen values at two points, NOx and CO limited."""
     return [
         *("sweep", "sized.toml", "--vary", f"{DILUTION}={0.95 * hole:.3f} mm:{hole:.3f} mm:15"),
-        *("--point", "full", "--point", "half", "--workers", "1"),
+        *("--point", "full", "--point", "half", "--workers", "1", "--no-margins"),
         *("--nox-limit", "150 ppm", "--co-limit", "500 ppm"),
     ]
 
@@ -164,7 +164,16 @@ def test_a_picture_without_the_library_is_refused_before_any_work(asked, capsys,
 
 
 def test_two_entries_vary_together(capsys):
-    arguments = ["sweep", "sized.toml", "--point", "full", "--workers", "1", "--json"]
+    arguments = [
+        "sweep",
+        "sized.toml",
+        "--point",
+        "full",
+        "--workers",
+        "1",
+        "--no-margins",
+        "--json",
+    ]
     arguments += ["--vary", "points.full.humidity=0:0.01:2", "--vary", "fuel.temperature=288:388:2"]
     main(arguments)
     points = json.loads(capsys.readouterr().out)["points"]
@@ -180,7 +189,7 @@ def test_two_entries_vary_together(capsys):
 
 def test_a_key_of_one_point_says_that_the_others_stand_still(capsys):
     arguments = ["sweep", "sized.toml", "--vary", "points.full.humidity=0:0.01:2"]
-    main([*arguments, "--point", "full", "--point", "half", "--workers", "1"])
+    main([*arguments, "--point", "full", "--point", "half", "--workers", "1", "--no-margins"])
     out = capsys.readouterr().out
     assert "Only full moves with points.full.humidity" in out
     assert "No limit on NOx or CO is stated" in out
@@ -188,7 +197,7 @@ def test_a_key_of_one_point_says_that_the_others_stand_still(capsys):
 
 def test_a_point_that_fails_exits_1_with_its_reason(capsys):
     arguments = ["sweep", "sized.toml", "--vary", "points.full.exit_temperature=1300:2990:2"]
-    assert main([*arguments, "--point", "full", "--workers", "1"]) == 1
+    assert main([*arguments, "--point", "full", "--workers", "1", "--no-margins"]) == 1
     out = capsys.readouterr().out
     assert re.search(r"^No result\n", out, re.M)
     assert "1 without a result" in out
@@ -248,7 +257,7 @@ def test_progress_goes_to_a_terminal_on_stderr_and_nowhere_else(folder, hole):
         [
             *(sys.executable, "-m", "combustor", "sweep", "sized.toml"),
             *("--vary", f"{DILUTION}={hole:.3f} mm:{hole + 1:.3f} mm:2", "--point", "full"),
-            *("--workers", "1", "--json"),
+            *("--workers", "1", "--no-margins", "--json"),
         ],
         cwd=folder,
         env={**os.environ, "PYTHONPATH": str(ROOT)},
@@ -275,5 +284,5 @@ def test_a_target_on_given_metal_says_that_the_metal_stays(capsys):
     assert cool == pytest.approx(hot, abs=1e-4)
     limits = [f["limit"] for p in points for f in p["findings"] if "wall temp" in f["what"]]
     assert limits == [1000.0, 1200.0]
-    main([*arguments, "--point", "full", "--workers", "1"])
+    main([*arguments, "--point", "full", "--workers", "1", "--no-margins"])
     assert "targets.wall_temperature moves what is judged" in capsys.readouterr().out

@@ -213,5 +213,6 @@ def test_the_digest_knows_what_results_depend_on(metal_text, metal_case):
     finer = loads_case(metal_text.replace("wall_stations = 20", "wall_stations = 21"))
     assert plan(finer, axes).digest != laid.digest
     assert plan(metal_case, axes, ["full"]).digest != laid.digest
+    assert plan(metal_case, axes, operability=False).digest != laid.digest
     other = [spaced(metal_case, DILUTION, 0.04, 0.05, 4)]
     assert plan(metal_case, other).digest != laid.digest

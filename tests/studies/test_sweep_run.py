@@ -19,7 +19,7 @@ from combustor.base.errors import InputError
 from combustor.case import loads_case
 from combustor.report.sweep_data import described
 from combustor.studies.executor import WorkerProcesses
-from combustor.studies.sweep import carried_out, results_name, sweep
+from combustor.studies.sweep import carried_out, results_name
 from combustor.studies.sweep_axis import spaced
 from combustor.studies.sweep_plan import plan
 from combustor.studies.sweep_run import WorkersDiedError
@@ -38,7 +38,8 @@ def lines_of(path):
 
 @pytest.fixture(scope="module")
 def laid(metal_case):
-    return plan(metal_case, [spaced(metal_case, DILUTION, "44 mm", "49 mm", 6)], POINTS)
+    axes = [spaced(metal_case, DILUTION, "44 mm", "49 mm", 6)]
+    return plan(metal_case, axes, POINTS, operability=False)
 
 
 @pytest.fixture(scope="module")
@@ -70,6 +71,17 @@ def test_a_swept_rating_is_the_rating_of_that_case(metal_case, alone):
     assert swept.exit_temperature == pytest.approx(rated.exit.temperature, abs=0.1)
     assert swept.nox == pytest.approx(rated.emissions.nox_dry_15, rel=2e-3)
     assert swept.pressure_loss == pytest.approx(rated.pressure_loss, rel=1e-4)
+
+
+def test_margins_are_those_of_a_rating_and_move_with_the_sweep(metal_case):
+    axes = [spaced(metal_case, "points.p40.exit_temperature", 1000.0, 1100.0, 3)]
+    laid = plan(metal_case, axes, ["p40"], sensitivities=False)
+    found = carried_out(laid, workers=1)
+    margins = [r.outcome.blowout_margin for _, r in found.grid]
+    assert margins == sorted(margins) and margins[0] < margins[-1]
+    case = combustor.case.override(metal_case, "points.p40.exit_temperature", 1050.0)
+    rated = combustor.rate(case, points=["p40"]).points[0]
+    assert margins[1] == rated.operability["blowout_margin_percent"]
 
 
 def test_more_dilution_area_takes_air_from_the_front(alone):
@@ -134,7 +146,8 @@ def test_a_finished_file_is_only_read(laid, alone):
 
 
 def test_another_sweep_into_the_same_file_is_refused(metal_case, alone):
-    other = plan(metal_case, [spaced(metal_case, DILUTION, "44 mm", "49 mm", 5)], POINTS)
+    axes = [spaced(metal_case, DILUTION, "44 mm", "49 mm", 5)]
+    other = plan(metal_case, axes, POINTS, operability=False)
     with pytest.raises(InputError, match="varies other entries"):
         carried_out(other, alone[1], workers=1, describe=described)
     assert results_name(other, "x", True) != results_name(alone[0].plan, "x", True)
@@ -200,7 +213,8 @@ def test_a_broken_executor_of_the_callers_ends_the_sweep_plainly(laid, folder, d
 def test_a_point_that_fails_is_a_row_with_its_reason(metal_case):
     hot = spaced(metal_case, "points.full.exit_temperature", 1200.0, 2990.0, 2)
     starved = spaced(metal_case, "points.idle.fuel_flow", 1e-4, 0.05, 2)
-    found = sweep(metal_case, [hot, starved], ["full", "idle"], workers=1, describe=described)
+    laid = plan(metal_case, [hot, starved], ["full", "idle"], False, False)
+    found = carried_out(laid, workers=1, describe=described)
     rows = {(row.indices, r.point): r for row, r in found.grid}
     assert rows[(0, 0), "full"].outcome.burning
     assert rows[(1, 0), "full"].outcome.status == "not_converged"
@@ -217,7 +231,7 @@ def test_a_case_without_metal_is_sized_anew_in_every_row(metal_text):
     bare = loads_case(metal_text.split("# The metal")[0] + "[model]\nstreams = 2\ncells = 1\n")
     assert bare.hardware is None
     axes = [spaced(bare, "targets.equivalence_ratio.primary", 0.85, 0.95, 2)]
-    laid = plan(bare, axes, ["full", "p80"], sensitivities=False)
+    laid = plan(bare, axes, ["full", "p80"], sensitivities=False, operability=False)
     one = carried_out(laid, workers=1)
     two = carried_out(laid, workers=2)
     assert one.results == two.results
@@ -228,7 +242,8 @@ def test_a_case_without_metal_is_sized_anew_in_every_row(metal_text):
 def test_a_row_that_cannot_be_sized_says_why(metal_text):
     bare = loads_case(metal_text.split("# The metal")[0] + "[model]\nstreams = 2\ncells = 1\n")
     axes = [spaced(bare, "combustor.casing_diameter", "150 mm", "440 mm", 2)]
-    found = carried_out(plan(bare, axes, ["full"], sensitivities=False), workers=1)
+    laid = plan(bare, axes, ["full"], sensitivities=False, operability=False)
+    found = carried_out(laid, workers=1)
     small, large = (r.outcome for _, r in found.grid)
     assert large.burning
     assert small.status == "not_converged" and "sizing" in small.reason
@@ -239,7 +254,7 @@ def command(metal_text, tmp_path):
     """A sweep as its own process, long enough to be stopped on the way."""
     (tmp_path / "case.toml").write_text(metal_text)
     arguments = ["sweep", "case.toml", "--vary", f"{DILUTION}=44 mm:49 mm:6", "--workers", "2"]
-    arguments += ["--point", "full", "--point", "p40", "--results", "r.jsonl"]
+    arguments += ["--point", "full", "--point", "p40", "--results", "r.jsonl", "--no-margins"]
     environment = {**os.environ, "PYTHONPATH": str(ROOT)}
     started = []
 

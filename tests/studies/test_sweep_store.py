@@ -15,6 +15,7 @@ HEADER = {
     "digest": "d1",
     "vary": [{"key": "k", "unit": "mm", "values": [1.0, 2.0]}],
     "points": ["full"],
+    "operability": True,
     "documents": True,
 }
 RESULTS = [
@@ -93,6 +94,7 @@ def test_a_second_writer_is_refused_plainly_and_harms_nothing(path):
         ({"points": ["idle"]}, "other operating points"),
         ({"vary": []}, "varies other entries"),
         ({"documents": False}, "trends only"),
+        ({"operability": False}, "without the margins"),
         ({"digest": "d2"}, "the case or its mechanism has changed"),
     ],
 )
