@@ -326,7 +326,7 @@ def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> t
         loading.IGNITION_LOADING.citation,
     )
     limit = loading.lean_flammable_limit(dict(fuel.composition), operating.inlet.temperature)
-    if limit is None:
+    if limit is None or equivalence_ratio is None:
         return
     moles = limit / (1.0 - limit) * fuel.molar_mass / 0.028965
     least = moles / fuel.stoichiometric_fuel_air_ratio
