@@ -292,7 +292,6 @@ def _margin_finding(operating: Operating, values: Mapping[str, float | None]) ->
     return Finding(level, "blow-out margin", margin, asked, "%", advice, BLOWOUT_MARGIN.citation)
 
 
-def _relight(
 def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> tuple[Finding, ...]:
     """Judge the loading of a relight point that does not burn; nothing of other points."""
     if operating.kind != "relight":
@@ -301,6 +300,7 @@ def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> t
 
 
     operating: Operating,
+def _relight(
     fuel: Fuel,
     values: Mapping[str, float | None],
     equivalence_ratio: float | None,
