@@ -132,9 +132,9 @@ def rate_near(
     if not operability:
         return replace(record, findings=findings), coupled
     if record.status != "burning":
+        findings += light_up_findings(operating, hardware, fuel)
         return replace(record, findings=findings, operability=NOTHING), coupled
     known = None if near is None else near.blowout
-        findings += light_up_findings(operating, hardware, fuel)
     judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record, known)
     coupled = replace(coupled, blowout=judged.blowout)
     methods = {method.key: method for method in (*record.methods, *judged.methods)}
