@@ -299,8 +299,8 @@ def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> t
     return tuple(_relight(operating, fuel, _correlated(operating, hardware, fuel), None))
 
 
-    operating: Operating,
 def _relight(
+    operating: Operating,
     fuel: Fuel,
     values: Mapping[str, float | None],
     equivalence_ratio: float | None,
