@@ -20,6 +20,7 @@ from combustor.rating.fuel_demand import FuelDemand
 from combustor.rating.near_wall import film_shares
 from combustor.rating.operating import Operating
 from combustor.rating.settings import Settings
+from combustor.rating.spray import SETTLED, Evaporation, evaporation_of
 from combustor.rating.walls import annulus_heat_of, heat_losses_of, walls_of
 from combustor.sizing.profile import liner_profile
 
@@ -51,6 +52,8 @@ class Coupled:
         primary zone goes out.
     streams : int or None
         Number used where it is not the one in the settings.
+    evaporation : Evaporation or None
+        Of a liquid fuel's spray.
     """
 
     split: AirSplit
@@ -61,6 +64,7 @@ class Coupled:
     blowout: FuelBlowout | None = None
     between: bool = False
     streams: int | None = None
+    evaporation: Evaporation | None = None
 
     def settings(self, wanted: Settings) -> Settings:
         """Return the settings this was solved with where ``wanted`` was asked for."""
@@ -139,6 +143,9 @@ def _agreed(
         cold = split(hardware, operating.inlet)
         hot = _first_fire(operating, hardware, cold, settings)
         solved = split(hardware, operating.inlet, hot, guess=cold)
+    spray: Evaporation | None = None
+    if near is not None and near.evaporation is not None:
+        spray = near.evaporation
     previous: Fire | None = None
     message = ""
     change = np.inf
@@ -147,10 +154,21 @@ def _agreed(
             message = f"air split: {solved.convergence.message}"
             break
         fire = light(
-            gas, operating, hardware, layout, solved, fuel_flow, settings, warm, losses, films
+            gas,
+            operating,
+            hardware,
+            layout,
+            solved,
+            fuel_flow,
+            settings,
+            warm,
+            losses,
+            films,
+            vapour=None if spray is None else spray.shares,
         )
         if fire.chain.status == "blown_out":
-            return Coupled(solved, fire, (), Convergence(True, 0.0, passes))
+            out = Convergence(True, 0.0, passes)
+            return Coupled(solved, fire, (), out, evaporation=spray)
         if fire.exit is None:
             message = f"chain of reactors: {fire.chain.convergence.message}"
             break
@@ -158,6 +176,9 @@ def _agreed(
         if not all(wall.convergence.converged for wall in walls):
             message = "wall: a heat balance did not close"
             break
+        times = [station.residence_time for station in fire.chain.stations]
+        new_spray = evaporation_of(operating, solved, hardware, fuel, fuel_flow, times)
+        spray_settled = new_spray is None or new_spray.moved(spray) < SETTLED
         new_losses, films = heat_losses_of(fire, walls), film_shares(walls)
         following = split(
             hardware,
@@ -177,18 +198,21 @@ def _agreed(
             < settings.temperature_tolerance
             and _films_moved(previous, fire) < settings.tolerance * operating.inlet.mass_flow
             and _heat_moved(losses, new_losses) < 1e-6 * fuel_flow * operating.lower_heating_value
+            and spray_settled
             and _temperature_met(operating, fire, settings)
         ):
             correction = fire.fuel_flow / operating.fuel_flow
-            return Coupled(solved, fire, walls, Convergence(True, change, passes), correction)
+            done = Convergence(True, change, passes)
+            return Coupled(solved, fire, walls, done, correction, evaporation=spray)
         if demand is not None and demand.falls_into_a_jump:
             break
-        previous, warm, losses, solved, fuel_flow = (
+        previous, warm, losses, solved, fuel_flow, spray = (
             fire,
             fire.chain,
             new_losses,
             following,
             next_fuel,
+            new_spray,
         )
     between = demand is not None and demand.falls_into_a_jump
     if between:

@@ -65,6 +65,12 @@ class Fire:
     exit_flow: float
     mixing: float
     beside: Beside
+    vapour: tuple[float, ...] | None = None
+
+    @property
+    def primary_vapour(self) -> float:
+        """Share of the fuel that is vapour in the primary zone."""
+        return 1.0 if self.vapour is None else self.vapour[0]
 
 
 def layout_of(hardware: Hardware, settings: Settings) -> Layout:
@@ -87,6 +93,7 @@ def light(
     heat_losses: Sequence[float] | None,
     films: Mapping[str, AxialProfile] | None = None,
     quenches: bool = True,
+    vapour: Sequence[float] | None = None,
 ) -> Fire:
     """Burn the fuel in the air as it splits.
 
@@ -99,6 +106,8 @@ def light(
         the core at the same rate and takes in nothing: what quenching adds is the difference.
     heat_losses : sequence of float or None
         Through the wall, of the primary zone and of each stretch, W.
+    vapour : sequence of float or None
+        Share of a liquid fuel that evaporates in the primary zone and in each stretch.
 
     Returns
     -------
@@ -109,19 +118,33 @@ def light(
     if mixing is None:
         mixing = mixing_rate(split, hardware.liner_height)
     inflows = [_air(operating, flow) for flow in split.openings]
-    primary = primary_of(operating, hardware, layout, split, fuel_flow, settings)
+    ready = fuel_flow if vapour is None else fuel_flow * vapour[0]
+    primary = primary_of(operating, hardware, layout, split, ready, settings)
+    late = _late_vapour(operating, fuel_flow, vapour, len(layout.stretches))
     side = [
         _joined(operating, inflows, [entry.stretches[place] for entry in layout.entries])
         for place in range(len(layout.stretches))
     ]
     core_flow = primary.fuel.mass_flow + primary.air.mass_flow
-    core_flows = core_flow + np.cumsum([0.0, *(air.mass_flow for air in side[:-1])])
+    core_flows = core_flow + np.cumsum(
+        [0.0, *(a.mass_flow + f.mass_flow for a, f in zip(side[:-1], late[:-1], strict=True))]
+    )
     beside = beside_of(
         hardware, layout.stretches, layout.entries, inflows, core_flows.tolist(), films
     )
     cells = [
-        Cell(s.zone, s.volume, s.start, s.end, _present(air), mixing, beside=exchange)
-        for s, air, exchange in zip(layout.stretches, side, beside.exchanges, strict=True)
+        Cell(
+            s.zone,
+            s.volume,
+            s.start,
+            s.end,
+            _present(air) + _present(fuel),
+            mixing,
+            beside=exchange,
+        )
+        for s, air, fuel, exchange in zip(
+            layout.stretches, side, late, beside.exchanges, strict=True
+        )
     ]
     if not quenches:
         cells = _with_film_air_mixed(operating, cells, beside)
@@ -129,7 +152,8 @@ def light(
     last = _joined(operating, inflows, [entry.exit for entry in layout.entries])
     mixed = None if chain.exit is None else _mixed(gas, chain, last)
     exit_flow = operating.inlet.mass_flow + fuel_flow + operating.water_flow
-    return Fire(chain, mixed, fuel_flow, exit_flow, mixing, beside)
+    shares = None if vapour is None else tuple(vapour)
+    return Fire(chain, mixed, fuel_flow, exit_flow, mixing, beside, shares)
 
 
 def primary_of(
@@ -234,6 +258,14 @@ def _joined(operating: Operating, inflows: Sequence[Stream], shares: Sequence[fl
     heat = sum(s.mass_flow * s.enthalpy * part for s, part in zip(inflows, shares, strict=True))
     enthalpy = heat / mass if mass > 0.0 else operating.air_enthalpy
     return Stream(mass, enthalpy, operating.air)
+
+
+def _late_vapour(
+    operating: Operating, fuel_flow: float, vapour: Sequence[float] | None, stretches: int
+) -> list[Stream]:
+    """Return the fuel that evaporates in each stretch behind the primary zone."""
+    shares = [0.0] * stretches if vapour is None else vapour[1:]
+    return [Stream(fuel_flow * s, operating.fuel_enthalpy, operating.fuel) for s in shares]
 
 
 def _present(air: Stream) -> tuple[Stream, ...]:

@@ -25,6 +25,7 @@ PATTERN_SLACK = 0.02
 EFFICIENCY = {"rated": 0.995, "part": 0.99, "idle": 0.98, "relight": 0.8}
 EMISSION_MARGIN = 0.85
 ANNULUS_MACH = 0.10
+EVAPORATED = 0.90
 LEAST_QUENCH = 1.0  # ppm of CO
 QUENCH_SHARE = 0.25  # of all CO, above which the films decide it
 RICH_FROM = 1.2
@@ -53,6 +54,7 @@ def findings_of(
         *_jets(rated),
         *_wall_quench(rated),
         *_annulus(rated, coupled),
+        *_spray(coupled),
         *_rich_chemistry(rated, fuel),
         *(crowded_rows(rated.hardware) if rated.hardware else ()),
         *_measured_openings(case),
@@ -285,6 +287,29 @@ def _sees_an_annulus(case: Case, name: str) -> bool:
     return row.role not in FRONT_ROLES
 
 
+def _spray(coupled: Coupled) -> Iterator[Finding]:
+    spray = coupled.evaporation
+    if spray is None:
+        return
+    ready = spray.shares[0]
+    level: Level = "ok" if ready >= EVAPORATED else "watch"
+    advice = f"Sauter mean drop size {1e6 * spray.drop_size:.0f} um."
+    if level == "watch":
+        advice += (
+            " The rest burns late and leaves carbon monoxide: finer drops (drop size to the "
+            "second power counts), hotter air or more primary volume."
+        )
+    yield Finding(
+        level,
+        "fuel evaporated in the primary zone",
+        100 * ready,
+        100 * EVAPORATED,
+        "%",
+        advice,
+        "evaporation by the square of the diameter; limit common practice",
+    )
+
+
 def _notices(
     rated: PointRating, coupled: Coupled, fuel: Fuel, settings: Settings
 ) -> Iterator[Finding]:
@@ -293,6 +318,7 @@ def _notices(
         *coupled.fire.chain.notices,
         *(notice for wall in coupled.walls for notice in wall.notices),
         *UNMIXEDNESS.notices(unmixedness=settings.unmixedness),
+        *(() if coupled.evaporation is None else coupled.evaporation.notices),
         *RECIRCULATION.notices(recirculation=settings.recirculation),
         *_of_mechanism(rated, fuel),
     ]

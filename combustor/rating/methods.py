@@ -10,6 +10,7 @@ from combustor.fuel.choose_mechanism import method_of
 from combustor.fuel.composition import STOICHIOMETRY
 from combustor.fuel.gas import DRY_AIR_COMPOSITION
 from combustor.fuel.heating_value import ISO_HEATING_VALUES, MECHANISM_HEATING_VALUES
+from combustor.fuel.lumped_methods import lumped_methods
 from combustor.fuel.record import Fuel
 from combustor.hardware.beam_length import BEAM_LENGTH
 from combustor.hardware.metal import Hardware
@@ -37,6 +38,9 @@ def methods_of(
         MECHANISM_HEATING_VALUES,
         method_of(fuel.mechanism),
     ]
+    used += lumped_methods(fuel)
+    if coupled.evaporation is not None:
+        used += coupled.evaporation.methods
     if operating.exit_temperature is not None:
         used.append(FUEL_DEMAND)
     if operating.water_flow > 0.0:

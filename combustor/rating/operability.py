@@ -22,7 +22,7 @@ from combustor.operability import blowout, loading
 from combustor.rating.couple import Coupled
 from combustor.rating.fire import chain_pressure, layout_of, primary_of
 from combustor.rating.operating import Operating
-from combustor.rating.premixer import premixer_of
+from combustor.rating.premixer import TIME_LAG_DIFFUSION, diffusion_time_lag, premixer_of
 from combustor.rating.record import PointRating
 from combustor.rating.settings import Settings
 from combustor.rating.walls import heat_losses_of
@@ -98,8 +98,9 @@ def operability_of(
         Of a neighbouring point, to save time.
     """
     fire = coupled.fire
+    ready = fire.fuel_flow * fire.primary_vapour
     primary = primary_of(
-        operating, hardware, layout_of(hardware, settings), coupled.split, fire.fuel_flow, settings
+        operating, hardware, layout_of(hardware, settings), coupled.split, ready, settings
     )
     zone = next(zone for zone in rated.zones if zone.name == "primary")
     values: dict[str, float | None] = dict(NOTHING)
@@ -108,7 +109,10 @@ def operability_of(
     values |= _mixed_zone(gas, coupled, primary, zone.equivalence_ratio, zone.residence_time or 0.0)
     values |= _correlated(operating, hardware, fuel)
     values |= _efficiency_loss(fuel, rated)
+    lag = diffusion_time_lag(hardware, coupled)
+    values["convective_time_lag_ms"] = None if lag is None else 1e3 * lag
     methods: list[Method] = [BLOWOUT_MARGIN, STIRRED_BLOWOUT, blowout.LEAN_BLOWOUT_LEFEBVRE]
+    methods.append(TIME_LAG_DIFFUSION)
     findings = list(_findings(operating, fuel, values, zone.equivalence_ratio))
     if operating.kind == "relight":
         methods += [loading.IGNITION_LOADING, blowout.LEAN_LIGHT_OFF_LEFEBVRE]

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 
 from combustor.airflow.result import Inlet
 from combustor.base.method import Method
-from combustor.case.schema import Case, Point
+from combustor.case.schema import Atomiser, Case, Point
 from combustor.fuel.gas import Gas
 from combustor.fuel.liquids import supplied_enthalpy
 from combustor.fuel.record import Fuel
@@ -58,6 +58,8 @@ class Operating:
         Equilibrium products by equivalence ratio, the first guess of the fire.
     fuel_split : mapping of str to float or None
         Share of the fuel by injector; None leaves it to the metal [-]
+    atomiser : Atomiser or None
+        Stated for a liquid fuel.
     """
 
     name: str
@@ -77,6 +79,7 @@ class Operating:
     stoichiometric_fuel_air_ratio: float
     products: HotGas
     fuel_split: Mapping[str, float] | None = None
+    atomiser: Atomiser | None = None
 
     @property
     def dry_air_flow(self) -> float:
@@ -138,5 +141,6 @@ def operating_of(case: Case, point: Point, fuel: Fuel, gas: Gas) -> Operating:
         lower_heating_value=fuel.lower_heating_value,
         stoichiometric_fuel_air_ratio=fuel.stoichiometric_fuel_air_ratio,
         products=products,
+        atomiser=case.fuel.atomiser,
         fuel_split=point.fuel_split,
     )

@@ -26,6 +26,7 @@ from combustor.rating.operability import (
 from combustor.rating.operating import operating_of
 from combustor.rating.record import PointRating, Ratings
 from combustor.rating.settings import Settings, settings_of
+from combustor.rating.spray import for_sprays
 from combustor.sizing.size import size
 
 
@@ -122,6 +123,7 @@ def rate_near(
         about as much again as the rating itself.
     """
     operating = operating_of(case, point, fuel, gas)
+    settings = for_sprays(settings, fuel)
     coupled = couple(gas, fuel, operating, hardware, settings, near)
     settings = coupled.settings(settings)
     if coupled.fire.exit is None or not coupled.convergence.converged:
