@@ -31,6 +31,16 @@ TIME_LAG = Method(
     reading="derived",
 )
 
+TIME_LAG_DIFFUSION = Method(
+    key="convective-time-lag-diffusion",
+    quantity="time from injector to flame where fuel and air meet in the liner",
+    source="a third of the liner's height at the velocity of the dome's fastest air",
+    reading="judgement",
+    scatter="factor 2",
+    note="for a first look at frequencies; combustion dynamics is not assessed",
+)
+FLAME_STAND_OFF = 1.0 / 3.0  # of the liner height
+
 AMPLE = 1.5  # margin over what is asked from which nothing is said
 COUNTED = 0.2  # s that the mechanism's delay is counted to, or this many times
 COUNTED_TIMES = 30.0  # the residence time where that is more
@@ -140,6 +150,13 @@ def premixer_of(
         ]
     findings += _vortex(hardware, metal, hydrogen)
     return Premixer(values, tuple(findings), tuple(methods))
+
+
+def diffusion_time_lag(hardware: Hardware, coupled: Coupled) -> float | None:
+    """Return the time from injector to flame in the liner [s]; source: ``TIME_LAG_DIFFUSION``."""
+    dome = [flow.jet_velocity for flow in coupled.split.openings if flow.role == "swirler"]
+    fastest = max(dome, default=0.0)
+    return FLAME_STAND_OFF * hardware.liner_height / fastest if fastest > 0.0 else None
 
 
 def charge_of(

@@ -181,7 +181,7 @@ OPERABILITY = (
     Field("burning_velocity_m_s", "laminar burning velocity", "", "m/s", 1.0, figures=3),
     Field("flashback_core_margin", "core velocity over what is asked", "", "-", 1.0, figures=3),
     Field("flashback_wall_margin", "wall gradient over what is asked", "", "-", 1.0, figures=3),
-    Field("convective_time_lag_ms", "time lag injector to dome", "", "ms", 1.0, figures=3),
+    Field("convective_time_lag_ms", "time lag injector to flame", "", "ms", 1.0, figures=3),
 )
 FINDINGS = (
     Field("level", "verdict"),
