@@ -193,7 +193,7 @@ def _rows(
     plans: dict[str, RowPlan] = {}
     for row in sketch.rows:
         share = sum(shares[name] for name in sketch.names(row.name))
-        conditions = row_conditions(task, sketch, row, share, profile, _solved(state))
+        conditions = row_conditions(task, sketch, row, share, profile, _solved(state, sketch, row))
         count = row.count if frozen else _of_all_sides(stated[row.name], sketch)
         plan = plan_row(conditions, task.section, sketch.liner_height, count)
         if frozen:
@@ -243,8 +243,11 @@ def row_conditions(
     )
 
 
-def _solved(state: State) -> AirSplit | None:
-    return None if state.fit is None else state.fit.split
+def _solved(state: State, sketch: Sketch, row: Row) -> AirSplit | None:
+    """Return the latest split, None where it does not know the row yet."""
+    if state.fit is None or sketch.names(row.name)[0] not in state.fit.areas:
+        return None
+    return state.fit.split
 
 
 def _fit(
