@@ -105,6 +105,11 @@ def _new(command: _Parser) -> None:
 def _size(command: _Parser) -> None:
     command.add_argument("case", metavar="CASE", help="case file")
     command.add_argument("-o", metavar="FILE", dest="output", help="write the completed case")
+    command.add_argument(
+        "--trades",
+        action="store_true",
+        help="relax each target by a step and size again; done unasked where a limit is broken",
+    )
     _tables(command)
 
 
@@ -114,6 +119,7 @@ def _rate(command: _Parser) -> None:
         "--point", metavar="NAME", action="append", help="rate this point only; may be repeated"
     )
     command.add_argument("--fuel", metavar="NAME", help="burn this fuel instead of the case's own")
+    command.add_argument("--mechanism", metavar="FILE", help="a Cantera file of your own")
     _tables(command)
 
 

@@ -38,8 +38,10 @@ def new(arguments: argparse.Namespace) -> Answer:
 def size(arguments: argparse.Namespace) -> Answer:
     """Size the metal of a case."""
     from combustor.case.write import write_case
+    from combustor.fuel.gas import Gas
     from combustor.hardware.to_case import table_of
     from combustor.report import sizing_tables as report
+    from combustor.sizing.trades import Trade, trades_of
 
     case = combustor.load_case(arguments.case)
     check_csv(arguments, report.SIZING_TABLES)
@@ -55,10 +57,13 @@ def size(arguments: argparse.Namespace) -> Answer:
     if case.hardware is not None:
         notes += ("the case holds metal already: it was left out and sized anew",)
     limit = not design.converged or any(f.level == "act" for f in design.findings)
+    trades: tuple[Trade, ...] = ()
+    if arguments.trades or limit:
+        trades = trades_of(case, fuel, Gas.load(fuel.mechanism), design)
     text = (
-        f"{dumps(report.design_document(design, case, combustor.__version__))}\n"
+        f"{dumps(report.design_document(design, case, combustor.__version__, trades))}\n"
         if arguments.json
-        else set_report(report.sizing_report(design, case, fuel.cautions))
+        else set_report(report.sizing_report(design, case, fuel.cautions, trades))
     )
     return Answer(text, EXIT_LIMIT if limit else EXIT_GOOD, notes)
 
@@ -72,7 +77,9 @@ def rate(arguments: argparse.Namespace) -> Answer:
 
     case = combustor.load_case(arguments.case)
     check_csv(arguments, RATING_TABLES)
-    ratings = combustor.rate(case, fuel=arguments.fuel, points=arguments.point)
+    ratings = combustor.rate(
+        case, fuel=arguments.fuel, points=arguments.point, mechanism=arguments.mechanism
+    )
     notes = write_tables(arguments, rating_data(ratings))
     levels = [level_of(point) for point in ratings.points]
     levels += [finding.level for finding in ratings.findings]
