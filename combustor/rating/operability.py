@@ -41,7 +41,8 @@ BLOWOUT_MARGIN = Method(
 BOLDEST, FINEST = 0.7, 0.95
 STEADY_MARGIN, DECELERATION_MARGIN, LEAST_MARGIN = 15.0, 30.0, 5.0  # %
 AMPLE_TIME, RELIGHT_TIME = 5.0, 2.0  # residence time over that of blow-out
-CO_HEAT, CH4_HEAT = 10.103e6, 50.03e6  # J/kg, lower, ISO 6976:2016
+LARGEST_DROPS = 80e-6  # m, of a spray that lights
+CO_HEAT = 10.103e6  # J/kg, ISO 6976:2016
 
 KEYS = (
     "blowout_fuel_air_ratio",
@@ -54,6 +55,7 @@ KEYS = (
     "light_off_fuel_air_ratio_correlation",
     "efficiency_loss_co_percent",
     "efficiency_loss_unburnt_percent",
+    "efficiency_loss_evaporation_percent",
     "premixer_time_ms",
     "autoignition_delay_ms",
     "autoignition_margin",
@@ -108,13 +110,14 @@ def operability_of(
     values |= _blowout(operating, coupled, found, zone.equivalence_ratio)
     values |= _mixed_zone(gas, coupled, primary, zone.equivalence_ratio, zone.residence_time or 0.0)
     values |= _correlated(operating, hardware, fuel)
-    values |= _efficiency_loss(fuel, rated)
+    values |= _efficiency_loss(fuel, rated, coupled)
     lag = diffusion_time_lag(hardware, coupled)
     values["convective_time_lag_ms"] = None if lag is None else 1e3 * lag
     methods: list[Method] = [BLOWOUT_MARGIN, STIRRED_BLOWOUT, blowout.LEAN_BLOWOUT_LEFEBVRE]
     methods.append(TIME_LAG_DIFFUSION)
     findings = list(_findings(operating, fuel, values, zone.equivalence_ratio))
     if operating.kind == "relight":
+        findings += _drops(coupled)
         methods += [loading.IGNITION_LOADING, blowout.LEAN_LIGHT_OFF_LEFEBVRE]
     for judged in (
         premixer_of(gas, operating, hardware, fuel, coupled, one)
@@ -241,15 +244,20 @@ def _correlated(operating: Operating, hardware: Hardware, fuel: Fuel) -> dict[st
     return found
 
 
-def _efficiency_loss(fuel: Fuel, rated: PointRating) -> dict[str, float | None]:
+def _efficiency_loss(fuel: Fuel, rated: PointRating, coupled: Coupled) -> dict[str, float | None]:
     made = rated.emissions
     if made is None or made.combustion_efficiency is None or made.ei_co is None:
         return {}
     lost = 100.0 * (1.0 - made.combustion_efficiency)
     monoxide = 100.0 * made.ei_co * CO_HEAT / fuel.lower_heating_value
+    unburnt = max(lost - monoxide, 0.0)
+    spray = coupled.evaporation
+    # what is liquid to the end leaves as unburnt vapour, so far as the last cell does not burn it
+    wet = None if spray is None else min(100.0 * spray.left, unburnt)
     return {
         "efficiency_loss_co_percent": monoxide,
-        "efficiency_loss_unburnt_percent": max(lost - monoxide, 0.0),
+        "efficiency_loss_unburnt_percent": unburnt - (wet or 0.0),
+        "efficiency_loss_evaporation_percent": wet,
     }
 
 
@@ -296,11 +304,37 @@ def _margin_finding(operating: Operating, values: Mapping[str, float | None]) ->
     return Finding(level, "blow-out margin", margin, asked, "%", advice, BLOWOUT_MARGIN.citation)
 
 
-def light_up_findings(operating: Operating, hardware: Hardware, fuel: Fuel) -> tuple[Finding, ...]:
-    """Judge the loading of a relight point that does not burn; nothing of other points."""
+def light_up_findings(
+    operating: Operating, hardware: Hardware, fuel: Fuel, coupled: Coupled
+) -> tuple[Finding, ...]:
+    """Judge loading and spray of a relight point that does not burn; nothing of other points."""
     if operating.kind != "relight":
         return ()
-    return tuple(_relight(operating, fuel, _correlated(operating, hardware, fuel), None))
+    values = _correlated(operating, hardware, fuel)
+    return (*_relight(operating, fuel, values, None), *_drops(coupled))
+
+
+def _drops(coupled: Coupled) -> Iterator[Finding]:
+    """Judge the spray at light-up."""
+    spray = coupled.evaporation
+    if spray is None:
+        return
+    level: Level = "ok" if spray.drop_size <= LARGEST_DROPS else "watch"
+    advice = (
+        f"{100.0 * spray.shares[0]:.0f} % of the fuel is vapour in the primary zone; fuel for lean "
+        "light-off rises with drop size squared."
+    )
+    if level == "watch":
+        advice += " A start nozzle, or more pressure across the atomiser, makes finer drops."
+    yield Finding(
+        level,
+        "drop size at light-up",
+        1e6 * spray.drop_size,
+        1e6 * LARGEST_DROPS,
+        "um",
+        advice,
+        "sprays much above 80 um seldom light (judgement)",
+    )
 
 
 def _relight(

@@ -134,7 +134,7 @@ def rate_near(
     if not operability:
         return replace(record, findings=findings), coupled
     if record.status != "burning":
-        findings += light_up_findings(operating, hardware, fuel)
+        findings += light_up_findings(operating, hardware, fuel, coupled)
         return replace(record, findings=findings, operability=NOTHING), coupled
     known = None if near is None else near.blowout
     judged = operability_of(gas, operating, hardware, fuel, coupled, settings, record, known)
