@@ -13,10 +13,14 @@ from combustor.report.field import Field, row, select
 from combustor.report.json_out import findings_list
 from combustor.report.rating_rows import SplitRow, rows_of_split
 from combustor.report.rating_tables import findings_table, solve_words
+from combustor.report.trade_tables import TRADES, trades_table
 from combustor.sizing.record import Design, Dimension
+from combustor.sizing.trades import Trade
 
 
-def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> tuple[Block, ...]:
+def sizing_report(
+    design: Design, case: Case, fuel_cautions: Sequence[str], trades: Sequence[Trade] = ()
+) -> tuple[Block, ...]:
     """Return the whole report of a sized case."""
     missed = f"worst target missed by {100.0 * design.convergence.residual:.0f} % of its tolerance"
     facts = (
@@ -31,6 +35,7 @@ def sizing_report(design: Design, case: Case, fuel_cautions: Sequence[str]) -> t
         methods_table(design),
         Table("zones", "Zones at the design point", fields.ZONE_TARGETS, design.zones),
         Table("split", "Air split at the design point", fields.SPLIT, _split(design, case)),
+        *((trades_table(trades),) if trades else ()),
         findings_table([("", finding) for finding in design.findings]),
         Heading("Before use"),
         *(Prose(line) for line in cautions(fuel_cautions)),
@@ -87,7 +92,9 @@ def sizing_data(design: Design, case: Case) -> tuple[Table, ...]:
 SIZING_TABLES = ("dimensions", "zones", "split", "findings")
 
 
-def design_document(design: Design, case: Case, version: str) -> dict[str, Any]:
+def design_document(
+    design: Design, case: Case, version: str, trades: Sequence[Trade] = ()
+) -> dict[str, Any]:
     """Return the document of ``size --json``."""
     return {
         "title": case.title,
@@ -99,6 +106,7 @@ def design_document(design: Design, case: Case, version: str) -> dict[str, Any]:
         "fuel_flow_kg_s": design.fuel_flow,
         "dimensions": [dimension_values(dimension) for dimension in design.dimensions],
         "zones": [row(fields.ZONE_TARGETS, zone) for zone in design.zones],
+        "trades": [row(TRADES, trade) for trade in trades],
         "split": [row(fields.SPLIT, line) for line in _split(design, case)],
         "findings": findings_list(design.findings),
     }
