@@ -87,13 +87,7 @@ def metal_of(sketch: Sketch, areas: Mapping[str, float], drilled: bool) -> Hardw
             for shape in sketch.sides
         ),
         walls=tuple(_wall(sketch, shape) for shape in sketch.sides),
-        diffuser=Diffuser(
-            sketch.diffuser.kind,
-            sketch.inlet_area,
-            sketch.inlet_area * sketch.diffuser.area_ratio,
-            sketch.diffuser.length,
-            sketch.diffuser.loss_coefficient,
-        ),
+        diffuser=_diffuser(sketch),
         openings=tuple(sorted(openings, key=lambda opening: opening.station)),
         zones=(
             Zone("primary", 0.0, primary_end),
@@ -284,6 +278,18 @@ def _nearest_few(area: float, drill: float) -> tuple[int, float]:
 def _written(area: float) -> float:
     """Return an area to four figures, as it is written down [m2]."""
     return float(f"{area:.4g}")
+
+
+def _diffuser(sketch: Sketch) -> Diffuser:
+    """Return the diffuser to the square millimetre and the tenth of a millimetre."""
+    shape = sketch.diffuser
+    return Diffuser(
+        shape.kind,
+        sketch.inlet_area,
+        round(sketch.inlet_area * shape.area_ratio, 6),
+        math.floor(shape.length * 1e4) / 1e4,
+        shape.loss_coefficient,
+    )
 
 
 def _liner(sketch: Sketch) -> Passage:
