@@ -215,6 +215,7 @@ class Targets(Table):
     swirlers: k.Holes | None = None
     pilot_fuel: k.Fraction = 0.10
     premixer_time: k.ResidenceTime = 1.0e-3
+    outer_dilution: k.Fraction | None = None
     hole_edge: Literal["plain", "plunged"] = "plain"
     primary_holes: k.Holes | None = None
     secondary_holes: k.Holes | None = None

@@ -118,6 +118,7 @@ def draw_sketch(
         drill_step=targets.drill_step,
         swirlers=swirlers_of(task.section, frame.liner_height, targets.swirlers),
         premixing=_premixing(task),
+        outer_dilution=targets.outer_dilution,
     )
 
 

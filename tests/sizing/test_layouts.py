@@ -236,3 +236,17 @@ def test_ring_of_vanishing_curvature_is_a_plane_channel(ring_state, widening):
         assert (outer + inner) / flat == pytest.approx(1.0, abs=0.01 / widening)
         assert abs(outer / inner - 1.0) < 0.4 / widening
     assert ring.pressure_loss == pytest.approx(plane.pressure_loss, rel=0.02 / widening)
+
+
+def test_a_stated_share_shifts_the_dilution_air_between_the_walls(sized, gas):
+    """More through the outer wall cools the tip, less at the root; flame and loss stay."""
+    text = (DEMO / RING).read_text() + 'outer_dilution = "62 %"\n'
+    case = loads_case(text, "shifted.toml")
+    design = size(case, fuel_of(case), gas)
+    assert design.converged
+    outer = design.split.opening("dilution-outer").mass_flow
+    inner = design.split.opening("dilution-inner").mass_flow
+    assert outer / (outer + inner) == pytest.approx(0.62, abs=0.01)
+    before, after = sized[RING].design.hardware, design.hardware
+    assert after.opening("dilution-outer").diameter > before.opening("dilution-outer").diameter
+    assert after.opening("dilution-inner").diameter < before.opening("dilution-inner").diameter
