@@ -15,7 +15,12 @@ from combustor.report.field import Field, row
 def fuels_table(fuels: Iterable[Fuel]) -> Table:
     """Return one line a fuel; volumes at 15 degC and 101.325 kPa, heat at 15 degC."""
     columns = tuple(field for field in fields.FUEL if field.key != "phase")
-    return Table("fuels", "Fuels (15 degC, 101.325 kPa, ideal gas)", columns, tuple(fuels))
+    return Table(
+        "fuels",
+        "Fuels (15 degC; gases ideal at 101.325 kPa, liquids as liquid)",
+        columns,
+        tuple(fuels),
+    )
 
 
 def fuel_report(fuel: Fuel) -> tuple[Block, ...]:
@@ -25,16 +30,36 @@ def fuel_report(fuel: Fuel) -> tuple[Block, ...]:
     facts += [(_flat(f), f.with_unit(fuel)) for f in fields.FUEL if f.key != "name"]
     facts += [
         ("hydrogen in the fuel", f"{100 * fuel.hydrogen_mass_fraction:.2f} % by mass"),
+        *_of_liquid(fuel),
         ("heating values from", fuel.heating_value_basis),
         ("mechanism", fuel.mechanism_note),
         ("composition from", fuel.source),
     ]
     return (
         Heading(f"Fuel {fuel.name}"),
-        Prose("Heating values at 15 degC; volumes at 15 degC and 101.325 kPa, ideal gas."),
+        Prose(
+            "Heating values and densities at 15 degC; gases as ideal gas at 101.325 kPa, "
+            "liquid fuels as liquid."
+        ),
         Facts(tuple(facts)),
         *(Prose(sentence(caution)) for caution in fuel.cautions),
     )
+
+
+def _of_liquid(fuel: Fuel) -> list[tuple[str, str]]:
+    liquid = fuel.liquid
+    if liquid is None:
+        return []
+    atoms = ", ".join(f"{element} {count:.4g}" for element, count in fuel.atoms.items())
+    return [
+        ("mean molecule", atoms),
+        ("latent heat", f"{1e-3 * liquid.latent_heat:.0f} kJ/kg, taken from the air"),
+        ("liquid heat capacity", f"{1e-3 * liquid.heat_capacity:.2f} kJ/kg/K"),
+        ("viscosity", f"{1e3 * liquid.viscosity:.2f} mPa.s"),
+        ("surface tension", f"{1e3 * liquid.surface_tension:.1f} mN/m"),
+        ("aromatics", f"{100 * liquid.aromatics:.1f} % by volume"),
+        ("sulfur, bound nitrogen", f"{1e6 * liquid.sulfur:.0f}, {1e6 * liquid.nitrogen:.0f} mg/kg"),
+    ]
 
 
 def fuels_data(fuels: Iterable[Fuel]) -> tuple[Table, ...]:
