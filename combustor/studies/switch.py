@@ -222,20 +222,21 @@ class _Study:
         try:
             if held is None:
                 return _without(point, fuel, "the injector cannot be followed to this fuel")
-            return rate_near(
-                self.case,
-                held,
-                fuel,
-                self.gas,
-                self.hardware,
-                self.settings,
-                self.solutions[point.name] if own.status == "burning" else None,
-                True,
-            )[0]
+            near = self.solutions[point.name] if own.status == "burning" else None
+            rated = self._rated(held, fuel, near)
+            if rated.status == "not_converged" and near is not None:
+                # another fuel's solution can be a poor start where streams go out
+                rated = self._rated(held, fuel, None)
+            return rated
         except InfeasibleError as error:
             return _without(point, fuel, str(error))
         finally:
             self._tell()
+
+    def _rated(self, point: Point, fuel: Fuel, near: Coupled | None) -> PointRating:
+        return rate_near(
+            self.case, point, fuel, self.gas, self.hardware, self.settings, near, True
+        )[0]
 
     def _held(self, point: Point, fuel: Fuel, own: PointRating) -> Point | None:
         """Return the operating point with what is held instead of what was stated."""
