@@ -147,6 +147,7 @@ def _agreed(
     if near is not None and near.evaporation is not None:
         spray = near.evaporation
     previous: Fire | None = None
+    may_have_come_from_afar = near is not None or demand is not None
     message = ""
     change = np.inf
     for passes in range(1, settings.passes + 1):
@@ -201,6 +202,25 @@ def _agreed(
             and spray_settled
             and _temperature_met(operating, fire, settings)
         ):
+            if may_have_come_from_afar and not fire.chain.stations[0].burning.all():
+                # streams that are out may only be out because those of the start were: ask
+                # again from the fire without wall losses, where any that can burn does
+                vapour = None if spray is None else spray.shares
+                hottest = light(
+                    gas,
+                    operating,
+                    hardware,
+                    layout,
+                    solved,
+                    fuel_flow,
+                    settings,
+                    None,
+                    None,
+                    films,
+                    vapour=vapour,
+                )
+                previous, warm, may_have_come_from_afar = fire, hottest.chain, False
+                continue
             correction = fire.fuel_flow / operating.fuel_flow
             done = Convergence(True, change, passes)
             return Coupled(solved, fire, walls, done, correction, evaporation=spray)
