@@ -82,28 +82,46 @@ def test_an_injector_that_cannot_pass_a_fuel_says_so():
         injector.pressure_ratio_for(Vapour(300.0, 500.0, 1.3), 1.0, 1e-9, 1e6)
 
 
-# Dry air at 700 K and 20 bar, fuel at 298 K: stoichiometric fuel-air ratio, stoichiometric
-# temperature, fuel-air ratio and heat per air for equilibrium at 1600 K, water in the products.
+# Dry air at 700 K and 20 bar: stoichiometric fuel-air ratio, stoichiometric temperature with the
+# fuel at the air's temperature; with the fuel at 298 K, fuel-air ratio and heat per air for
+# equilibrium at 1600 K, water in the products.
 @pytest.mark.parametrize(
     ("name", "stoichiometric", "flame", "fuel_air", "heat", "water"),
     [
-        ("methane", 0.0580, 2478.0, 0.02345, 1.173, 0.081),
-        ("hydrogen", 0.0292, 2629.0, 0.01003, 1.203, 0.134),
-        ("syngas", 0.3185, 2517.0, 0.10804, 1.288, 0.064),
-        ("biogas", 0.1642, 2337.0, 0.07078, 1.251, 0.084),
+        ("methane", 0.0580, 2509.0, 0.02345, 1.173, 0.081),
+        ("natural-gas", 0.0608, 2510.0, 0.02452, 1.173, 0.080),
+        ("methane+30%hydrogen", 0.0552, 2528.0, 0.02195, 1.176, 0.087),
+        ("methane+50%hydrogen", 0.0523, 2548.0, 0.02040, 1.180, 0.094),
+        ("hydrogen", 0.0292, 2695.0, 0.01003, 1.203, 0.134),
+        ("propane", 0.0638, 2553.0, 0.02500, 1.158, 0.064),
+        ("biogas", 0.1642, 2385.0, 0.07078, 1.251, 0.084),
+        ("syngas", 0.3185, 2588.0, 0.10804, 1.288, 0.064),
     ],
 )
 def test_fuel_properties_in_dry_air(gas, name, stoichiometric, flame, fuel_air, heat, water):
     fuel = catalogue.find(name, GRI)
-    supply = Supply(20e5, 700.0, 0.0, 298.15)
     assert fuel.stoichiometric_fuel_air_ratio == pytest.approx(stoichiometric, rel=0.005)
-    hot = burn_to_equilibrium(gas, fuel, supply, fuel.stoichiometric_fuel_air_ratio)
+    hot = burn_to_equilibrium(
+        gas, fuel, Supply(20e5, 700.0, 0.0, 700.0), fuel.stoichiometric_fuel_air_ratio
+    )
     assert hot.temperature == pytest.approx(flame, abs=5.0)
+    supply = Supply(20e5, 700.0, 0.0, 298.15)
     found = fuel_air_ratio_for(gas, fuel, supply, 1600.0)
     assert found == pytest.approx(fuel_air, rel=0.005)
     assert 1e-6 * found * fuel.lower_heating_value == pytest.approx(heat, rel=0.005)
     made = gas.mole_fractions(burn_to_equilibrium(gas, fuel, supply, found).mass_fractions)
     assert made[gas.index("H2O")] == pytest.approx(water, abs=0.0006)
+
+
+@pytest.mark.parametrize(
+    ("name", "flame"),
+    [("methane", 2478.0), ("hydrogen", 2629.0), ("syngas", 2517.0), ("biogas", 2337.0)],
+)
+def test_flame_temperature_with_cold_fuel(gas, name, flame):
+    fuel = catalogue.find(name, GRI)
+    supply = Supply(20e5, 700.0, 0.0, 298.15)
+    hot = burn_to_equilibrium(gas, fuel, supply, fuel.stoichiometric_fuel_air_ratio)
+    assert hot.temperature == pytest.approx(flame, abs=5.0)
 
 
 # Molar mass, lower heating value, lower and higher Wobbe, corrected Wobbe at 15 degC, Weaver's S.
