@@ -125,6 +125,11 @@ BEHIND: Mapping[str, tuple[str, ...]] = {
     "operability.light_off_fuel_air_ratio_correlation": ("lean-light-off-lefebvre",),
     "operability.efficiency_loss_co_percent": ("combustion-efficiency-loss", *_STREAMS),
     "operability.efficiency_loss_unburnt_percent": ("combustion-efficiency-loss", *_STREAMS),
+    "operability.efficiency_loss_evaporation_percent": (
+        "combustion-efficiency-loss",
+        "evaporation-d-squared",
+        "evaporation-effective",
+    ),
     "operability.premixer_time_ms": ("orifice-compressible", *_HOLES),
     "operability.autoignition_delay_ms": (
         "ignition-delay-jet-a",

@@ -12,7 +12,7 @@ from combustor.base.errors import InfeasibleError, InputError, NotConvergedError
 from combustor.cli import commands, main
 from combustor.cli.complaint import complaint
 
-ROOT = Path(combustor.__file__).parent.parent
+ROOT = Path(__file__).parents[2]
 COMMANDS = ["new", "size", "rate", "sweep", "comply", "flame", "convert", "fuels", "rules"]
 
 

@@ -8,11 +8,10 @@ from pathlib import Path
 
 import pytest
 
-import combustor
 from combustor.cli import main
 from combustor.emissions.rule_set import names
 
-DEMO = Path(combustor.__file__).parent.parent / "demo"
+DEMO = Path(__file__).parents[2] / "demo"
 CONVERT = ["convert", "43.2", "--species", "NOx", "--fuel", "natural-gas", "--to", "ppmvd@15"]
 VERDICT_KEYS = {
     "point",

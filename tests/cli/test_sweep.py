@@ -15,7 +15,7 @@ import combustor
 from combustor.case.starter import starter_text
 from combustor.cli import main
 
-ROOT = Path(combustor.__file__).parent.parent
+ROOT = Path(__file__).parents[2]
 COARSE = "\n[model]\nstreams = 2\ncells = 2\nwall_stations = 20\n"
 DILUTION = "hardware.openings.dilution.diameter"
 

@@ -7,7 +7,6 @@ from pathlib import Path
 
 import pytest
 
-import combustor
 from combustor.case.load import loads_case
 from combustor.emissions.rule_set import names, shipped
 from combustor.fuel import catalogue
@@ -21,7 +20,7 @@ from combustor.studies.comply import comply
 from combustor.studies.convert import convert
 from combustor.studies.convert_record import Sample
 
-DEMO = Path(combustor.__file__).parent.parent / "demo"
+DEMO = Path(__file__).parents[2] / "demo"
 RULES = """
 [model]
 streams = 2

@@ -16,7 +16,7 @@ from combustor.emissions.landing_takeoff import characteristic_factor
 from combustor.studies.comply import comply
 from combustor.studies.landing_cycle import CYCLE
 
-DEMO = Path(combustor.__file__).parent.parent / "demo"
+DEMO = Path(__file__).parents[2] / "demo"
 # Coarse, so that a rating costs little; what is tested here does not depend on it.
 COARSE = "[model]\nstreams = 3\ncells = 2\nwall_stations = 20\n\n[rules]"
 TEXT = (DEMO / "pump_drive_permit.toml").read_text().replace("[rules]", COARSE)

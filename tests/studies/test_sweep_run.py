@@ -24,7 +24,7 @@ from combustor.studies.sweep_axis import spaced
 from combustor.studies.sweep_plan import plan
 from combustor.studies.sweep_run import WorkersDiedError
 
-ROOT = Path(combustor.__file__).parent.parent
+ROOT = Path(__file__).parents[2]
 DILUTION = "hardware.openings.dilution.diameter"
 POINTS = ["full", "p40"]
 
