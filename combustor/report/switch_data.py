@@ -4,7 +4,9 @@ from __future__ import annotations
 
 from typing import Any
 
-from combustor.emissions.dew_point import water_dew_point
+from combustor.emissions.dew_point import acid_dew_point, water_dew_point
+from combustor.emissions.exhaust import Emissions
+from combustor.emissions.stack import stack_of
 from combustor.rating.record import PointRating
 from combustor.report import switch_fields as fields
 from combustor.report import theme
@@ -12,6 +14,7 @@ from combustor.report.document import Table
 from combustor.report.field import Field, row
 from combustor.report.rating_data import point_fields
 from combustor.report.rating_json import point_document
+from combustor.studies.switch_fuels import Properties
 from combustor.studies.switch_record import Limit, Rung, Switch, Switched
 from combustor.studies.switch_verdict import reason_words
 
@@ -58,6 +61,7 @@ def property_records(switch: Switch) -> tuple[dict[str, Any], ...]:
                 "flame": p.stoichiometric_temperature,
                 "carbon_dioxide": p.carbon_dioxide,
                 "co2_cut_percent": cut,
+                "sulfur": p.sulfur,
             }
         )
     return tuple(found)
@@ -120,7 +124,8 @@ def _point_record(one: Switched, place: int, base: PointRating) -> dict[str, Any
         "nh3": made and made.nh3_dry_15,
         "water": made and made.h2o_wet,
         "carbon_dioxide": None if rated.fuel_flow is None else carbon * rated.fuel_flow,
-        "dew_point": None if made is None else water_dew_point(made.h2o_wet) - ICE,
+        "dew_point": made and _celsius(water_dew_point(made.h2o_wet)),
+        "acid_dew_point": made and _celsius(_acid_dew_point(one.properties, made)),
         "efficiency": rated.exit.combustion_efficiency,
         "margin": judged.get("blowout_margin_percent"),
         "autoignition": judged.get("autoignition_margin"),
@@ -131,6 +136,18 @@ def _point_record(one: Switched, place: int, base: PointRating) -> dict[str, Any
         "split": _moved(base, rated),
         "pattern": rated.exit.pattern_factor,
     }
+
+
+def _acid_dew_point(properties: Properties, made: Emissions) -> float | None:
+    """Return the acid dew point of an exhaust at atmospheric pressure, K; None without sulfur."""
+    fuel = properties.fuel
+    heat = (fuel.lower_heating_value, fuel.higher_heating_value)
+    stack = stack_of(made, *heat, fuel_sulfur=properties.sulfur)
+    return acid_dew_point(made.h2o_wet, stack.wet.get("SO3", 0.0))
+
+
+def _celsius(kelvin: float | None) -> float | None:
+    return None if kelvin is None else kelvin - ICE
 
 
 def _moved(base: PointRating, rated: PointRating) -> float | None:

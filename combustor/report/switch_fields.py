@@ -16,6 +16,7 @@ PROPERTIES = (
     Field("stoichiometric_temperature_K", "stoich.\nflame", "flame", "K", 1.0, decimals=0),
     Field("co2_g_MJ", "CO2", "carbon_dioxide", "g/MJ", 1e9, decimals=2),
     Field("co2_cut_percent", "CO2\ncut", "", "%", 1.0, decimals=1),
+    Field("sulfur_mg_kg", "sulfur", "sulfur", "mg/kg", 1e6, decimals=0),
 )
 SHARES = (
     Field("fuel", "fuel"),
@@ -77,6 +78,7 @@ MORE = (
     Field("h2o_percent_wet", "H2O\nwet", "water", "%", 100.0, decimals=1),
     Field("co2_kg_s", "CO2", "carbon_dioxide", "kg/s", 1.0, figures=3),
     Field("water_dew_point_degC", "water\ndew point", "dew_point", "degC", 1.0, decimals=1),
+    Field("acid_dew_point_degC", "acid\ndew point", "acid_dew_point", "degC", 1.0, decimals=1),
     Field("pattern_factor", "pattern\nfactor", "pattern", "-", 1.0, decimals=3),
     Field("autoignition_margin", "auto-\nignition", "autoignition", "-", 1.0, figures=3),
     Field("flashback_core_margin", "flashback\ncore", "core", "-", 1.0, figures=3),

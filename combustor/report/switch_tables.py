@@ -101,6 +101,11 @@ def _facts(switch: Switch) -> tuple[tuple[str, str], ...]:
             f"{switch.injector_ratio_source}",
         ),
     ]
+    unstated = [p.fuel.name for p in (s.properties for s in all_of(switch)) if p.sulfur is None]
+    if unstated:
+        facts.append(
+            ("sulfur", f"not stated for {', '.join(unstated)}: acid dew point not worked out")
+        )
     if switch.sized:
         facts.append(("metal", "none in the case: sized on the present fuel first"))
     return tuple(facts)

@@ -134,6 +134,11 @@ def fuel_sulfur(case: Case, fuel: Fuel) -> float | None:
     """Return sulfur as share of the fuel's mass: stated, or zero where it cannot hold any."""
     if case.rules.fuel_sulfur is not None:
         return case.rules.fuel_sulfur
+    return sulfur_held(fuel)
+
+
+def sulfur_held(fuel: Fuel) -> float | None:
+    """Return the sulfur a fuel is known to hold, mass share, or None where that is not known."""
     if fuel.liquid is not None and fuel.liquid.sulfur > 0.0:
         return fuel.liquid.sulfur
     pure = {species.upper() for species in fuel.composition} <= {"H2", "NH3", "N2"}

@@ -14,6 +14,7 @@ from combustor.fuel.of_case import fuel_of
 from combustor.fuel.record import Fuel
 from combustor.operability.injector import modified_wobbe, weaver_factor
 from combustor.sizing.fire import Supply, burn_to_equilibrium
+from combustor.studies.switch_sulfur import sulfur_of
 
 CARBON_DIOXIDE = 44.0095e-3  # kg/mol
 MOST_RUNGS = 101
@@ -46,6 +47,8 @@ class Properties:
         Flame-speed factor, hydrogen 100.
     stoichiometric_temperature : float
         Equilibrium at the inlet of the design point, moist air [K]
+    sulfur : float or None
+        Of the fuel's mass; None where nobody stated it [-]
     """
 
     fuel: Fuel
@@ -54,6 +57,7 @@ class Properties:
     modified_wobbe: float | None
     weaver: float | None
     stoichiometric_temperature: float
+    sulfur: float | None = None
 
 
 @dataclass(frozen=True)
@@ -199,15 +203,17 @@ def properties_of(case: Case, fuel: Fuel, gas: Gas) -> Properties:
     flame = burn_to_equilibrium(gas, fuel, supply, fuel.stoichiometric_fuel_air_ratio)
     carbon = fuel.atoms.get("C", 0.0)
     density = fuel.relative_density
+    shares = shares_of(fuel)
     return Properties(
         fuel=fuel,
-        shares=shares_of(fuel),
+        shares=shares,
         carbon_dioxide=carbon * CARBON_DIOXIDE / fuel.molar_mass / fuel.lower_heating_value,
         modified_wobbe=None
         if density is None
         else modified_wobbe(fuel.lower_heat_per_volume, density, case.fuel.temperature),
         weaver=None if fuel.phase == "liquid" else weaver_factor(fuel.composition),
         stoichiometric_temperature=flame.temperature,
+        sulfur=sulfur_of(case, fuel, [(share.part, share.mass) for share in shares]),
     )
 
 

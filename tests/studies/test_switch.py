@@ -6,16 +6,18 @@ import pytest
 
 import combustor
 from combustor.base.errors import InputError
+from combustor.emissions.dew_point import acid_dew_point_okkes
 from combustor.fuel.gas import Gas
 from combustor.hardware.from_case import hardware_of
 from combustor.rating.operating import operating_of
-from combustor.report.switch_data import switch_data, switch_document
+from combustor.report.switch_data import point_records, switch_data, switch_document
 from combustor.report.switch_tables import switch_report
 from combustor.report.terminal import Page, render
 from combustor.studies.switch import switch_fuel
 from combustor.studies.switch_changes import open_rows
 from combustor.studies.switch_fuels import properties_of, read_ladder, shares_of
 from combustor.studies.switch_record import Change, Limit
+from combustor.studies.switch_sulfur import sulfur_of
 from combustor.studies.switch_verdict import verdict_of
 
 GRI = "gri30.yaml"
@@ -232,3 +234,53 @@ def test_ladder_finds_the_share_and_what_stops_it(short_case):
     assert found.share == 0.0
     assert found.stopped_by.what.startswith("fuel nozzle")
     assert found.with_nozzle == 0.6 and found.then_stopped_by is None
+
+
+# -- dew points ---------------------------------------------------------------------------------
+
+
+def with_sulfur(case, share):
+    return case.model_copy(update={"rules": case.rules.model_copy(update={"fuel_sulfur": share})})
+
+
+@pytest.mark.parametrize(
+    ("stated", "name", "sulfur"),
+    [
+        (None, "natural-gas", None),
+        (None, "hydrogen", 0.0),
+        (None, "jet-a", 4e-4),
+        (2e-5, "natural-gas", 2e-5),
+        (2e-5, "biogas", None),
+        (2e-5, "hydrogen", 0.0),
+    ],
+)
+def test_sulfur_is_what_was_stated_of_each_fuel(metal_case, stated, name, sulfur):
+    case = with_sulfur(metal_case, stated)
+    assert sulfur_of(case, combustor.find_fuel(name), [(name, 1.0)]) == sulfur
+
+
+def test_hydrogen_dilutes_the_sulfur_of_the_present_fuel(metal_case):
+    case, blend = with_sulfur(metal_case, 2e-5), combustor.find_fuel("natural-gas+30%hydrogen", GRI)
+    found = properties_of(case, blend, Gas.load(GRI))
+    gas = next(share for share in found.shares if share.part == "natural-gas")
+    assert found.sulfur == pytest.approx(2e-5 * gas.mass, rel=1e-12)
+
+
+def test_acid_dew_point_lies_above_that_of_water_where_there_is_sulfur(switched):
+    blend = by_name(switched, "biogas")
+    sulfurous = replace(blend, properties=replace(blend.properties, sulfur=1e-3))
+    mixed = replace(switched, fuels=(*switched.fuels[:1], sulfurous))
+    own, hydrogen, biogas = point_records(mixed, "full")
+    assert own["acid_dew_point"] is None and hydrogen["acid_dew_point"] is None
+    assert all(20.0 < line["dew_point"] < 70.0 for line in (own, hydrogen, biogas))
+    # 0.1 % of sulfur is 2.0 g SO2 per kg of fuel, 2 % of it as SO3
+    made = blend.points[0].emissions
+    so3 = 1e-3 / 32.06e-3 * 0.02 * made.fuel_flow * made.mean_molar_mass / made.gas_flow
+    printed = acid_dew_point_okkes(101325.0 * made.h2o_wet, 101325.0 * so3) - 273.15
+    assert biogas["acid_dew_point"] == pytest.approx(printed, abs=5.0)
+    assert biogas["acid_dew_point"] > biogas["dew_point"] + 30.0
+    beside = switch_document(mixed, "1")["side_by_side"]
+    line = next(d for d in beside if (d["point"], d["fuel"]) == ("full", "biogas"))
+    assert line["acid_dew_point_degC"] == pytest.approx(biogas["acid_dew_point"])
+    text = render(switch_report(mixed), Page(width=120))
+    assert "dew point" in text and "not stated for natural-gas:" in text
