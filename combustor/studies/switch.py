@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Sequence
 from dataclasses import replace
+from functools import partial
 
 from combustor.airflow.result import Inlet
 from combustor.base.convergence import Convergence
@@ -172,7 +173,14 @@ class _Study:
         uses = self._uses(fuel, points, self.nozzle, self.own_uses)
         limits = limits_of(self.case, properties, points, own, self.own_points)
         changes = changes_of(
-            self.case, self.hardware, self._inlet(), self.own_points, points, uses, limits
+            self.case,
+            self.hardware,
+            self._inlet(),
+            self.own_points,
+            points,
+            uses,
+            limits,
+            partial(self._on_other_metal, fuel),
         )
         nox, mechanism = self._by_its_own(fuel, points)
         reasons = reasons_of(own, properties, self.own_points, points, uses, limits, self.hold)
@@ -237,6 +245,18 @@ class _Study:
         return rate_near(
             self.case, point, fuel, self.gas, self.hardware, self.settings, near, True
         )[0]
+
+    def _on_other_metal(self, fuel: Fuel, hardware: Hardware) -> PointRating | None:
+        """Return the design point on a fuel and changed metal, or None where it does not burn."""
+        point, own = self.case.design_point, self._design(self.own_points)
+        held = self._held(point, fuel, own)
+        if held is None:
+            return None
+        try:
+            rated = rate_point(self.case, held, fuel, self.gas, hardware, self.settings)
+        except InfeasibleError:
+            return None
+        return rated if rated.status == "burning" else None
 
     def _held(self, point: Point, fuel: Fuel, own: PointRating) -> Point | None:
         """Return the operating point with what is held instead of what was stated."""

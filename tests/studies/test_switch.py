@@ -10,13 +10,15 @@ from combustor.emissions.dew_point import acid_dew_point_okkes
 from combustor.fuel.gas import Gas
 from combustor.hardware.from_case import hardware_of
 from combustor.rating.operating import operating_of
+from combustor.rating.rate import rate_point
+from combustor.rating.settings import settings_of
 from combustor.report.switch_data import point_records, switch_data, switch_document
 from combustor.report.switch_tables import switch_report
 from combustor.report.terminal import Page, render
 from combustor.studies.switch import switch_fuel
-from combustor.studies.switch_changes import open_rows
 from combustor.studies.switch_fuels import properties_of, read_ladder, shares_of
 from combustor.studies.switch_record import Change, Limit
+from combustor.studies.switch_rows import open_rows, row_changes, with_diameter
 from combustor.studies.switch_sulfur import sulfur_of
 from combustor.studies.switch_verdict import verdict_of
 
@@ -180,6 +182,67 @@ def test_opened_rows_bring_the_air_where_it_is_wanted(short_case, switched):
     more = open_rows(short_case, metal, inlet, 1.05)
     assert more.name == "primary" and more.share_ratio == pytest.approx(1.05, abs=0.02)
     assert open_rows(short_case, metal, inlet, 0.2) is None
+
+
+def test_the_opened_row_is_verified_by_rating_the_opened_metal(short_case, switched):
+    hydrogen = by_name(switched, "hydrogen")
+    (change,) = (c for c in hydrogen.changes if c.what == "row dilution")
+    diameter = 1e-3 * float(change.amount.split(" -> ")[1].split()[0])
+    metal = hardware_of(short_case)
+    fuel = hydrogen.properties.fuel
+    point = short_case.points[0].model_copy(
+        update={"exit_temperature": switched.baseline.points[0].exit.temperature}
+    )
+    opened = with_diameter(metal, metal.opening("dilution"), diameter)
+    rated = rate_point(
+        short_case, point, fuel, Gas.load(fuel.mechanism), opened, settings_of(short_case.model)
+    )
+    (reached,) = (zone.equivalence_ratio for zone in rated.zones if zone.name == "primary")
+    (wanted,) = (
+        zone.equivalence_ratio
+        for zone in switched.baseline.points[0].zones
+        if zone.name == "primary"
+    )
+    assert reached == pytest.approx(wanted, rel=0.02)
+    assert f"rated again at full, it comes to {reached:.3f}" in change.note
+    assert f"{100.0 * rated.pressure_loss:.2f} % pressure loss" in change.note
+
+
+def rows_of(short_case, switched, rate):
+    own, new = switched.baseline.points[0], by_name(switched, "hydrogen").points[0]
+    fuel = switched.baseline.properties.fuel
+    inlet = operating_of(short_case, short_case.points[0], fuel, Gas.load(fuel.mechanism)).inlet
+    (change,) = row_changes(short_case, hardware_of(short_case), inlet, own, new, rate)
+    return change, own
+
+
+def with_primary(point, equivalence_ratio):
+    zones = tuple(
+        replace(zone, equivalence_ratio=equivalence_ratio) if zone.name == "primary" else zone
+        for zone in point.zones
+    )
+    return replace(point, zones=zones)
+
+
+def test_an_opened_row_that_cannot_be_rated_is_said_to_be_an_estimate(short_case, switched):
+    change, _ = rows_of(short_case, switched, lambda metal: None)
+    assert "by the cold air split alone" in change.note
+
+
+def test_a_row_that_misses_is_drilled_once_more(short_case, switched):
+    cold, own = rows_of(short_case, switched, lambda metal: None)
+    (wanted,) = (zone.equivalence_ratio for zone in own.zones if zone.name == "primary")
+    tried = []
+
+    def rate(metal):
+        tried.append(metal.opening("dilution").diameter)
+        return with_primary(own, wanted * (0.95 if len(tried) == 1 else 0.99))
+
+    again, _ = rows_of(short_case, switched, rate)
+    # too lean: more air is to be drawn from the primary zone, so the row opens further
+    assert len(tried) == 2 and tried[1] > tried[0]
+    assert f"-> {1e3 * tried[0]:.2f} mm" in cold.amount
+    assert f"-> {1e3 * tried[1]:.2f} mm" in again.amount
 
 
 # -- verdicts and reports -----------------------------------------------------------------------
