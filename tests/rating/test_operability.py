@@ -1,13 +1,18 @@
 """Blow-out, light-up and premixers of a rated machine."""
 
 from dataclasses import replace
+from pathlib import Path
 
 import pytest
 
-from combustor.case import loads_case
+from combustor.case import load_case, loads_case
+from combustor.fuel.gas import Gas
+from combustor.fuel.of_case import fuel_of
 from combustor.hardware.metal import Injector
 from combustor.rating.operability import KEYS, STEADY_MARGIN, deceleration
 from combustor.rating.rate import rate_near, rate_point
+from combustor.rating.settings import settings_of
+from combustor.sizing.size import size
 
 
 def judged(bench, point, hardware=None, fuel=None):
@@ -127,3 +132,34 @@ def test_a_passage_of_unknown_size_cannot_be_judged_and_says_so(bench):
     assert said and "premix_area" in said[0].advice
     assert found.operability["autoignition_margin"] is None
     assert STEADY_MARGIN == 15.0
+
+
+def test_a_kerosene_premixer_of_a_tenth_of_a_metre_is_refused():
+    """0.1 m at 80 m/s behind air of 20 atm and 800 K: 0.88 ms of delay against 1.25 ms inside."""
+    case = load_case(Path(__file__).parents[2] / "demo" / "aero_can_jet_a.toml")
+    fuel = fuel_of(case)
+    gas = Gas.load(fuel.mechanism)
+    metal = size(case, fuel, gas).hardware
+    swirler = next(o.name for o in metal.openings if o.role == "swirler")
+    design = case.design_point
+    point = design.model_copy(
+        update={
+            "air_flow": design.air_flow * 20.0 * 101325.0 / design.inlet_pressure,
+            "inlet_pressure": 20.0 * 101325.0,
+            "inlet_temperature": 800.0,
+        }
+    )
+
+    def rated(area):
+        hardware = replace(metal, injectors=(Injector("main", 1.0, (swirler,), 0.1, area),))
+        settings = replace(settings_of(case.model), streams=3)
+        return rate_point(case, point, fuel, gas, hardware, settings, operability=True)
+
+    guess = rated(1e-3).operability["premixer_time_ms"]
+    found = rated(1e-3 * 1.25 / guess)
+    assert found.operability["premixer_time_ms"] == pytest.approx(1.25, rel=0.02)
+    assert found.operability["autoignition_delay_ms"] == pytest.approx(0.88, abs=0.005)
+    assert found.operability["autoignition_margin"] == pytest.approx(0.88 / 3.75, rel=0.03)
+    (finding,) = (f for f in found.findings if f.what.startswith("autoignition"))
+    assert finding.level == "act"
+    assert "autoignition-temperature-of-a-spray" in {m.key for m in found.methods}
