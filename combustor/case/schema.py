@@ -349,4 +349,5 @@ class Case(Table):
         """Two cases are the same when they say the same, wherever they were read."""
         return isinstance(other, Case) and self.__dict__ == other.__dict__
 
+    # a case holds mappings, so it is no key; the base class declares a method here
     __hash__ = None  # type: ignore[assignment]

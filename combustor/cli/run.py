@@ -20,7 +20,7 @@ def main(argv: Sequence[str] | None = None) -> int:
     if sys.stdout is None:
         from pathlib import Path
 
-        sys.stdout = Path(os.devnull).open("w", encoding="utf-8")  # noqa: SIM115
+        sys.stdout = Path(os.devnull).open("w", encoding="utf-8")  # noqa: SIM115 - open as long as the process
     try:
         code = _run(sys.argv[1:] if argv is None else list(argv))
         sys.stdout.flush()

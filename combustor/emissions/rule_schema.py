@@ -28,10 +28,9 @@ Long = Annotated[str, BeforeValidator(word("text", longest=2000))]
 
 
 def _number(value: object) -> float:
-    finite = isinstance(value, int | float) and not isinstance(value, bool)
-    if not finite or not abs(float(value)) < 1e12:  # type: ignore[arg-type]
+    if isinstance(value, bool) or not isinstance(value, int | float) or not abs(value) < 1e12:
         raise refusal("not a number", "a bare number in the row's own unit")
-    return float(value)  # type: ignore[arg-type]
+    return float(value)
 
 
 def _limit(value: object) -> float:

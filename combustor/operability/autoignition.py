@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
+from functools import partial
 
 from combustor.base.method import Method
 
@@ -165,14 +166,12 @@ def correlated(
     if carbon_number > 6.0:
         method = DELAY_DIESEL if carbon_number > 13.0 else DELAY_JET_A
         jet = delay_diesel if carbon_number > 13.0 else delay_jet_a
-        formula = lambda: jet(temperature, pressure)  # noqa: E731
+        formula = partial(jet, temperature, pressure)
     elif fuel.get("CH4", 0.0) >= 0.5 and fuel.get("H2", 0.0) < HYDROGEN_SHARE:
         methane = mixture["CH4"]
         heavier = sum(mixture.get(s, 0.0) for s in ("C2H6", "C3H8", "C2H4", "C4H10"))
         method = DELAY_NATURAL_GAS if heavier > 0.0 else DELAY_METHANE
-        formula = lambda: delay_natural_gas(  # noqa: E731
-            temperature, pressure, mixture["O2"], methane, heavier
-        )
+        formula = partial(delay_natural_gas, temperature, pressure, mixture["O2"], methane, heavier)
     else:
         return None
     outside = bool(method.notices(temperature=temperature, pressure=pressure))

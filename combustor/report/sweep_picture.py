@@ -35,7 +35,7 @@ def check_picture(path: Path) -> None:
         )
     check_folder(path.parent, _OPTION)
     try:
-        import matplotlib.figure  # noqa: F401
+        import matplotlib.figure  # noqa: F401 - only whether it is there
     except ImportError:
         raise InputError(
             Problem("pictures need matplotlib", "pip install 'combustor[plots]'", _OPTION)

@@ -96,7 +96,7 @@ TREES = st.dictionaries(
 )
 
 
-def leaves(node: object, path: tuple[str | int, ...] = ()):  # type: ignore[no-untyped-def]
+def leaves(node: object, path: tuple[str | int, ...] = ()):
     if isinstance(node, dict):
         for key, value in node.items():
             yield (*path, key)
